@@ -1,0 +1,72 @@
+#pragma once
+// The rule engine's doors: load a set of rules against the library and the fact catalogue, judge a solved supply, draw the conclusions.
+// A rule set with any mistake is refused whole, with places inside the expressions. Rule language: style guide section 3, DEVELOPERS.md.
+#include "rule/finding.hpp"
+
+#include <memory>
+
+namespace onehand {
+
+struct rule_set; // compiled; immutable; shared
+
+struct rules_result {
+    std::shared_ptr<const rule_set> rules;
+    std::vector<complaint> complaints;
+};
+/// Compiles every rule document and class of the library.
+rules_result compile_rules(const library& lib);
+
+struct judging_options {
+    std::vector<std::string> limit_sets; // sets in force; "practice" rules always are
+    std::string derating;                // none | usual | severe
+};
+
+/// The class of each subject that a class is about, e.g. {"iec-62368-1-steady", "ES3"}; empty name: not shown.
+struct class_told {
+    subject about;
+    state in = state::running;
+    std::string id;
+    std::string name;
+    std::vector<std::string> missing;
+};
+
+struct judgement {
+    std::vector<finding> findings;   // ordered by verdict, signal, rule, natural order of reference
+    std::vector<class_told> classes;
+    std::vector<std::string> loosened; // shop rules milder than the published one they name
+};
+/// `changed` names the change under which the facts hold ("none" as built): only rules for such changes are judged. `changes_kind` is "none", "single-fault", "input-event", "unplugged".
+judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts, const judging_options& options,
+                const std::string& changed = "none", const std::string& change_kind = "none");
+
+/// Design section 3. `unattested` are the lines for what the description does not attest as complete.
+conclusions conclude(const std::vector<finding>& findings, bool waiting_time_known);
+
+/// Runs a rule's own examples; one line a mismatch. `id` empty: all.
+struct example_result {
+    std::string rule;
+    std::string example;
+    std::string expected;
+    std::string got;
+    bool agrees = false;
+};
+std::vector<example_result> run_examples(const rule_set& rules, const library& lib);
+
+/// What `cite` and `rules` show of a rule.
+struct rule_view {
+    std::string id, title, subject, when, require, advise, message, why, remedy, limit_set;
+    std::vector<std::string> states, bears_on;
+    signal_word signal = signal_word::notice;
+    bool protects_person = false;
+    citation from;
+    struct example {
+        std::string name, verdict;
+        std::vector<std::pair<std::string, std::string>> given;
+    };
+    std::vector<example> examples;
+    place at;
+    bool shop = false;
+};
+std::vector<rule_view> view_rules(const rule_set& rules, const library& lib);
+
+} // namespace onehand
