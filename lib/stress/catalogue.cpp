@@ -1,0 +1,125 @@
+#include "stress/facts.hpp"
+
+namespace onehand {
+
+namespace {
+
+using type = value::type;
+
+fact_spec solved(std::string subject, std::string name, dimension d, std::string meaning, std::vector<std::string> depends = {})
+{
+    return {std::move(subject), std::move(name), type::number, d, std::move(meaning), true, std::move(depends), {}};
+}
+
+fact_spec told(std::string subject, std::string name, dimension d, std::string meaning)
+{
+    return {std::move(subject), std::move(name), type::number, d, std::move(meaning), false, {}, {}};
+}
+
+fact_spec truth(std::string subject, std::string name, std::string meaning)
+{
+    return {std::move(subject), std::move(name), type::truth, dim::none, std::move(meaning), false, {}, {}};
+}
+
+fact_spec choice(std::string subject, std::string name, std::string meaning, std::vector<std::string> choices)
+{
+    return {std::move(subject), std::move(name), type::choice, dim::none, std::move(meaning), false, {}, std::move(choices)};
+}
+
+void add_parts(std::vector<fact_spec>& list)
+{
+    list.push_back(solved("part", "voltage", dim::voltage, "across the part, first terminal positive; of one body where it is a string"));
+    list.push_back(solved("part", "current", dim::current, "through the part, into its first terminal"));
+    list.push_back(solved("part", "power", dim::power, "dissipated in the part, spread jointly", {"value"}));
+    list.push_back(told("part", "ambient", dim::temperature, "air around the part: ambient and the rise inside"));
+    list.push_back(solved("mosfet", "peak-voltage", dim::voltage, "drain to source at its highest, the spike included"));
+    list.push_back(solved("diode", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
+    list.push_back(solved("zener", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
+    list.push_back(solved("capacitor", "reverse-voltage", dim::voltage, "how far its marked negative stands above its marked positive; 0 V if never"));
+    list.push_back(truth("capacitor", "polarised", "written with positive and negative"));
+    list.push_back(truth("capacitor", "electrolytic", "its dielectric is an electrolyte: over voltage or reversed it can burst"));
+    list.push_back(solved("trimmer", "track-current", dim::current, "the greater of the two sections' currents, wiper anywhere in its travel"));
+    list.push_back(solved("trimmer", "span-voltage", dim::voltage, "greatest voltage between any two of its terminals", {}));
+}
+
+void add_gaps(std::vector<fact_spec>& list)
+{
+    for (const char* s : {"gap", "net-pair"}) {
+        list.push_back(solved(s, "voltage", dim::voltage, "working voltage between the nets: magnitude, over running, no-load and standby"));
+        list.push_back(truth(s, "person-side", "one of the nets can be touched, the other is another circuit's or above 60 V"));
+    }
+    list.push_back(told("gap", "clearance", dim::length, "measured distance through air"));
+    list.push_back(told("gap", "creepage", dim::length, "measured distance along the surface"));
+    list.push_back(told("gap", "required-creepage", dim::length, "IEC 60664-1 creepage at the working voltage, pollution degree and material; twice for reinforced"));
+    list.push_back(told("gap", "required-clearance", dim::length, "IEC 60664-1 steady-state clearance, least by pollution degree, altitude counted"));
+    list.push_back(choice("gap", "insulation", "as written, or by law", {"functional", "basic", "supplementary", "reinforced"}));
+    list.push_back(truth("gap", "bridge-worse", "bridging the gap puts hazardous voltage on something that can be touched, or raises a class"));
+    list.push_back(told("gap", "pollution-degree", dim::none, "1 to 4"));
+    list.push_back(choice("net-pair", "covered", "whether a written gap, a floor gap or nothing covers the pair", {"gap", "floor", "none"}));
+}
+
+void add_energy(std::vector<fact_spec>& list)
+{
+    list.push_back(solved("stored", "voltage", dim::voltage, "greatest voltage held"));
+    list.push_back(told("stored", "capacitance", dim::capacitance, "all that can reach the pair, tolerance included"));
+    list.push_back(solved("stored", "energy", dim::energy, "C U^2 / 2, spread jointly", {"value"}));
+    list.push_back(solved("stored", "charge", dim::charge, "C U, spread jointly", {"value"}));
+    list.push_back(solved("stored", "at-once-energy", dim::energy, "into the body within 10 ms, through what is in series"));
+    list.push_back(solved("stored", "at-once-charge", dim::charge, "into the body within 10 ms, through what is in series"));
+    list.push_back(truth("stored", "is-pair", "an accessible pair, not a single capacitor"));
+    list.push_back(truth("stored", "discharge-path", "a soldered resistive path joins the two nets"));
+    list.push_back(choice("stored", "paths", "how many single parts would have to fail before nothing discharges it", {"none", "one", "several"}));
+    list.push_back(told("stored", "es1-voltage", dim::voltage, "IEC 62368-1 table 5, ES1 limit at its capacitance"));
+    list.push_back(told("stored", "es2-voltage", dim::voltage, "IEC 62368-1 table 5, ES2 limit at its capacitance"));
+
+    list.push_back(solved("access", "voltage", dim::voltage, "between the nets, magnitude"));
+    list.push_back(solved("access", "touch-current", dim::current, "steady, through the standard's body of 2 kohm"));
+    list.push_back(solved("access", "charge", dim::charge, "all that can flow from the pair after switch-off"));
+    list.push_back(choice("access", "when", "when it can be reached", {"always", "cover off", "plug withdrawn"}));
+    list.push_back(truth("access", "touchable", "open always, by plug withdrawn, or the chassis"));
+    list.push_back(truth("access", "discharge-path", "a soldered resistive path joins the two nets"));
+    list.push_back(solved("access", "after-1-s", dim::voltage, "left one second after switch-off, input open or shorted, whichever is worse"));
+    list.push_back(solved("access", "after-2-s", dim::voltage, "left two seconds after switch-off"));
+    list.push_back(solved("access", "after-5-s", dim::voltage, "left five seconds after switch-off"));
+    list.push_back(solved("access", "after-10-s", dim::voltage, "left ten seconds after switch-off"));
+}
+
+void add_whole(std::vector<fact_spec>& list)
+{
+    list.push_back(solved("converter", "set-point", dim::voltage, "output at its set point, trimmer anywhere, tolerances against it"));
+    list.push_back(truth("converter", "feedback-lost", "at some setting the feedback no longer depends on the output, or cannot hold it"));
+    list.push_back(choice("converter", "topology", "as written", {"boost", "flyback", "boost-multiplier", "module"}));
+    list.push_back(truth("converter", "isolates", "the topology separates output from input"));
+    list.push_back(truth("supply", "input-fused", "a fuse stands in the input path: nothing is fed but through it"));
+    list.push_back(truth("supply", "input-isolated", "as written"));
+    list.push_back(truth("supply", "label", "as written; absent if not"));
+    list.push_back(truth("supply", "indicator", "as written; absent if not"));
+    list.push_back(truth("supply", "interlock", "as written; absent if not"));
+    list.push_back(choice("supply", "enclosure", "as written; open if not", {"open", "covered", "finger-proof"}));
+    for (const char* what : {"capacitors", "sources", "access"}) {
+        list.push_back(truth("supply", std::string(what) + "-attested", "the description says that its list is complete"));
+    }
+    list.push_back(choice("supply", "person", "ordinary if unsaid", {"ordinary", "instructed", "skilled"}));
+    list.push_back(choice("supply", "setting", "as written", {"teaching lab", "repair bench", "display equipment"}));
+    list.push_back(truth("supply", "chassis-declared", "a chassis net is written"));
+    list.push_back(truth("supply", "return-bonded", "the return is bonded to the chassis"));
+    list.push_back(solved("supply", "highest-voltage", dim::voltage, "greatest voltage between any net and the return"));
+    list.push_back(solved("supply", "highest-energy", dim::energy, "greatest energy stored in one accessible pair"));
+}
+
+} // namespace
+
+const std::vector<fact_spec>& fact_catalogue()
+{
+    static const std::vector<fact_spec> list = [] {
+        std::vector<fact_spec> l;
+        add_parts(l);
+        add_gaps(l);
+        add_energy(l);
+        add_whole(l);
+        return l;
+    }();
+    return list;
+}
+
+} // namespace onehand
