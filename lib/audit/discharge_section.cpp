@@ -1,0 +1,152 @@
+// What stays after switch-off, pair by pair and case by case, and the waiting time for the label.
+#include "audit/sections.hpp"
+#include "stress/paths.hpp"
+#include "stress/spread_math.hpp"
+
+#include <algorithm>
+#include <array>
+#include <fmt/format.h>
+
+namespace onehand {
+
+namespace {
+
+constexpr std::array<double, 5> remainders{1.0, 5.0, 10.0, 60.0, 300.0}; // design section 6, in seconds
+
+/// Voltages that the sets in force name, with the sets that name them.
+std::vector<std::pair<double, std::string>> limits_for(const std::vector<std::string>& sets)
+{
+    std::string at_60;
+    for (const std::string& name : sets) {
+        if (name == "IEC 60204-1" || name == "IEC 61010-1" || name == "IEC 62368-1") {
+            at_60 += (at_60.empty() ? "" : ", ") + name;
+        }
+    }
+    std::vector<std::pair<double, std::string>> list{{60.0, at_60.empty() ? "practice" : at_60}};
+    if (std::find(sets.begin(), sets.end(), "IEC 62368-1") != sets.end()) {
+        list.emplace_back(120.0, "IEC 62368-1");
+    }
+    return list;
+}
+
+discharge_facts case_of(const solved_supply& s, const access_item& a, const off_case& how, const std::vector<std::string>& sets)
+{
+    const decay_network& network = s.after(how);
+    const std::string& from = a.where.nets[0];
+    const std::string& to = a.where.nets[1];
+    discharge_facts f;
+    f.nets = a.where.nets;
+    f.input_end = how.input_shorted ? "shorted" : "open";
+    f.output_end = how.output_unplugged ? "unplugged" : "fitted";
+    f.change = how.broken.empty() ? "none" : how.broken + " open";
+    for (const auto& [volts, names] : limits_for(sets)) {
+        const auto charge = highest(a.charge);
+        f.limits.push_back({{volts, dim::voltage}, network.time_to(from, to, volts), names, charge && *charge <= 45e-6});
+    }
+    for (const double t : remainders) {
+        f.left.push_back({t, network.left_after(from, to, t)});
+    }
+    f.final_voltage = network.final_voltage(from, to);
+    return f;
+}
+
+std::string measured_words(const solved_supply& s, const std::vector<std::string>& nets)
+{
+    for (const decay& d : s.written().decays) {
+        const bool same = (d.nets[0] == nets[0] && d.nets[1] == nets[1]) || (d.nets[0] == nets[1] && d.nets[1] == nets[0]);
+        if (same && d.from && d.to && d.time) {
+            return fmt::format("measured from {} to {} in {}: it bounds what is inside", d.from->written, d.to->written, d.time->written);
+        }
+    }
+    return {};
+}
+
+/// The parts whose loss alone would leave the pair's capacitors undischarged, or the first body of each path otherwise.
+std::vector<std::string> paths_to_break(const solved_supply& s)
+{
+    std::vector<std::string> refs;
+    for (const element& e : wire(s.bodies(), s.data(), state::switched_off, s.output().stage_parts)) {
+        if (discharges(e) && std::find(e.forms.begin(), e.forms.end(), element_spec::form::resistance) != e.forms.end() &&
+            std::find(refs.begin(), refs.end(), e.ref) == refs.end()) {
+            refs.push_back(e.ref);
+        }
+    }
+    return refs;
+}
+
+/// The longest time to 60 V of any capacitor pair worth waiting for, every path broken in turn.
+value longest_wait(const solved_supply& s, const access_item& a)
+{
+    value worst;
+    const auto add = [&](const off_case& how) {
+        const value t = s.after(how).time_to(a.where.nets[0], a.where.nets[1], low_voltage);
+        if (t.never) {
+            worst = t;
+            worst.reason += how.broken.empty() ? "" : " (with " + how.broken + " open)";
+            return false;
+        }
+        worst = worst.numbers.empty() && worst.missing.empty() ? t : greater(worst, t);
+        return true;
+    };
+    for (const off_case& how : s.off_cases()) {
+        if (!add(how)) {
+            return worst;
+        }
+    }
+    for (const std::string& ref : paths_to_break(s)) {
+        if (!add({false, false, ref})) {
+            return worst;
+        }
+    }
+    return worst;
+}
+
+} // namespace
+
+std::vector<discharge_facts> discharge_section(const solved_supply& s, const std::vector<std::string>& sets)
+{
+    std::vector<discharge_facts> list;
+    for (const access_item& a : s.accesses()) {
+        const auto stored = std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
+        for (const off_case& how : s.off_cases()) {
+            discharge_facts f = case_of(s, a, how, sets);
+            f.only_path = stored != s.stored().end() ? stored->only_part : "";
+            f.measured = measured_words(s, a.where.nets);
+            list.push_back(std::move(f));
+        }
+    }
+    return list;
+}
+
+std::optional<label_facts> label_section(const solved_supply& s)
+{
+    if (s.accesses().empty()) {
+        return std::nullopt;
+    }
+    label_facts f;
+    const subject whole{"supply", "", {}, {}};
+    f.voltage = s.look_up(whole, state::running, "highest-voltage");
+    f.energy = s.look_up(whole, state::running, "highest-energy");
+    for (const access_item& a : s.accesses()) {
+        const auto charge = highest(a.charge);
+        if (charge && *charge <= 45e-6) {
+            continue; // too little charge to wait for, by every set's exemption
+        }
+        const value t = longest_wait(s, a);
+        if (t.never || !t.known()) {
+            f.wait = t;
+            f.reason = a.about.name + ": " + (t.never ? t.reason : "not all is known");
+            return f;
+        }
+        f.wait = f.wait.numbers.empty() ? t : greater(f.wait, t);
+    }
+    if (f.wait.numbers.empty()) {
+        f.wait = number(exactly({0.0, dim::time}));
+        f.reason = "no pair holds more than 45 µC";
+    } else {
+        f.reason = "longest time to 60 V, any one discharge path open";
+    }
+    return f;
+}
+
+} // namespace onehand

@@ -1,0 +1,17 @@
+#pragma once
+// The sections of a result, each laid out from the solved supply.
+#include "audit/audit.hpp"
+#include "stress/solved.hpp"
+
+namespace onehand {
+
+std::vector<net_facts> net_section(const solved_supply& s);
+std::vector<part_facts> part_section(const solved_supply& s);
+std::optional<set_point_facts> set_point_section(const solved_supply& s);
+std::vector<access_facts> access_section(const solved_supply& s, const judgement& judged);
+std::vector<stored_facts> stored_section(const solved_supply& s, const judgement& judged);
+std::vector<discharge_facts> discharge_section(const solved_supply& s, const std::vector<std::string>& sets);
+std::vector<spacing_facts> spacing_section(const solved_supply& s);
+std::optional<label_facts> label_section(const solved_supply& s);
+
+} // namespace onehand

@@ -1,0 +1,269 @@
+// The look-ups of solved_supply: a fact by subject, state and name.
+#include "stress/solved.hpp"
+
+#include <algorithm>
+
+namespace onehand {
+
+namespace {
+
+value no_fact(const subject& s, const std::string& name)
+{
+    return missing_value(value::type::number, {s.name + "." + name});
+}
+
+template<class Item>
+const Item* item_of(const std::vector<Item>& list, const subject& s)
+{
+    const auto it = std::find_if(list.begin(), list.end(), [&](const Item& i) { return i.about == s; });
+    return it == list.end() ? nullptr : &*it;
+}
+
+/// The largest of a signed value's negatives: how far it goes below zero, told as a positive number.
+value below_zero(value v)
+{
+    for (spread& s : v.numbers) {
+        s = clamped(negated(s), 0.0, unbounded);
+    }
+    return v;
+}
+
+bool is_electrolytic(const std::string& dielectric)
+{
+    return dielectric.find("electrolytic") != std::string::npos || dielectric.find("tantalum") != std::string::npos;
+}
+
+value diode_fact(const rail& output, const part& p, const value& voltage)
+{
+    const bool stage = std::find(output.stage_parts.begin(), output.stage_parts.end(), p.ref) != output.stage_parts.end();
+    if (!stage) {
+        return below_zero(voltage);
+    }
+    value v = output.output; // a boost rectifier blocks the whole rail while the switch is on
+    v.shown.formula = "the rail, while the switch is on";
+    return output.topology == "boost" ? v : missing_value(value::type::number, {p.ref + " in a " + output.topology + " stage"});
+}
+
+} // namespace
+
+const dc_solution& solved_supply::at(state in) const
+{
+    const auto it = std::find_if(states_.begin(), states_.end(), [&](const dc_solution& d) { return d.in == in; });
+    return it == states_.end() ? states_.front() : *it;
+}
+
+value solved_supply::part_fact(const subject& s, state in, const std::string& name) const
+{
+    const part* p = bodies_.find_part(s.name);
+    const kind_spec* kind = p == nullptr ? nullptr : lib_.find_kind(p->kind);
+    if (kind == nullptr) {
+        return no_fact(s, name);
+    }
+    if (name == "ambient") {
+        return inside_temperature(bodies_.used);
+    }
+    if (name == "polarised") {
+        return truth_of(p->polarised);
+    }
+    if (name == "electrolytic") {
+        const value d = field_value(*p, *kind, lib_, "dielectric");
+        return d.choice.empty() ? missing_value(value::type::truth, {p->ref + ".dielectric"}) : truth_of(is_electrolytic(d.choice));
+    }
+    const auto found = at(in).bodies.find(s.name);
+    if (name == "peak-voltage") {
+        return output_.peak;
+    }
+    if (found != at(in).bodies.end()) {
+        const body_solution& b = found->second;
+        if (name == "voltage") {
+            return b.voltage;
+        }
+        if (name == "current") {
+            return b.current;
+        }
+        if (name == "power") {
+            return b.power;
+        }
+        if (name == "reverse-voltage") {
+            return p->kind == "diode" ? diode_fact(output_, *p, b.voltage) : below_zero(b.voltage);
+        }
+        if (name == "track-current" && b.track_current) {
+            return *b.track_current;
+        }
+        if (name == "span-voltage" && b.span_voltage) {
+            return *b.span_voltage;
+        }
+    }
+    return kind->find(name) != nullptr ? field_value(*p, *kind, lib_, name) : no_fact(s, name);
+}
+
+value solved_supply::gap_fact(const subject& s, const std::string& name) const
+{
+    const gap_item* g = item_of(gaps_, s);
+    if (g == nullptr) {
+        return no_fact(s, name);
+    }
+    if (name == "voltage") {
+        return g->voltage;
+    }
+    if (name == "person-side") {
+        return truth_of(g->person_side);
+    }
+    if (name == "insulation") {
+        return choice_of(g->insulation);
+    }
+    if (name == "bridge-worse") {
+        return truth_of(g->bridge_worse);
+    }
+    if (name == "required-creepage") {
+        return g->need.creepage;
+    }
+    if (name == "required-clearance") {
+        return g->need.clearance;
+    }
+    if (name == "clearance") {
+        return written_value(g->written->clearance, value::type::number, s.name + ".clearance");
+    }
+    if (name == "creepage") {
+        return written_value(g->written->creepage, value::type::number, s.name + ".creepage");
+    }
+    if (name == "pollution-degree") {
+        return written_value(bodies_.used.pollution_degree, value::type::number, "use.pollution-degree");
+    }
+    return no_fact(s, name);
+}
+
+value solved_supply::pair_fact(const subject& s, const std::string& name) const
+{
+    const pair_item* p = item_of(pairs_, s);
+    if (p == nullptr) {
+        return no_fact(s, name);
+    }
+    if (name == "voltage") {
+        return p->voltage;
+    }
+    if (name == "person-side") {
+        return truth_of(p->person_side);
+    }
+    if (name == "covered") {
+        return choice_of(p->covered);
+    }
+    return no_fact(s, name);
+}
+
+value solved_supply::stored_fact(const subject& s, const std::string& name) const
+{
+    const stored_item* i = item_of(stored_, s);
+    if (i == nullptr) {
+        return no_fact(s, name);
+    }
+    if (name == "is-pair") {
+        return truth_of(i->is_pair);
+    }
+    if (name == "discharge-path") {
+        return truth_of(i->discharge_path);
+    }
+    if (name == "paths") {
+        return choice_of(i->paths);
+    }
+    const std::pair<const char*, const value*> figures[] = {{"voltage", &i->voltage},
+                                                            {"capacitance", &i->capacitance},
+                                                            {"energy", &i->energy},
+                                                            {"charge", &i->charge},
+                                                            {"at-once-energy", &i->at_once_energy},
+                                                            {"at-once-charge", &i->at_once_charge},
+                                                            {"es1-voltage", &i->es1_voltage},
+                                                            {"es2-voltage", &i->es2_voltage}};
+    for (const auto& [word, figure] : figures) {
+        if (name == word) {
+            return *figure;
+        }
+    }
+    return no_fact(s, name);
+}
+
+value solved_supply::access_fact(const subject& s, state in, const std::string& name) const
+{
+    const access_item* a = item_of(accesses_, s);
+    if (a == nullptr) {
+        return no_fact(s, name);
+    }
+    if (name == "voltage") {
+        const auto v = a->voltage.find(in == state::switched_off ? state::no_load : in);
+        return v == a->voltage.end() ? no_fact(s, name) : v->second;
+    }
+    if (name == "touch-current") {
+        const auto i = a->touch_current.find(in == state::switched_off ? state::no_load : in);
+        return i == a->touch_current.end() ? no_fact(s, name) : i->second;
+    }
+    if (name == "charge") {
+        return a->charge;
+    }
+    if (name == "when") {
+        return choice_of(a->where.when);
+    }
+    if (name == "touchable") {
+        return truth_of(a->touchable);
+    }
+    if (name == "discharge-path") {
+        return truth_of(a->discharge_path);
+    }
+    const std::pair<const char*, double> left[] = {{"after-1-s", 1.0}, {"after-2-s", 2.0}, {"after-5-s", 5.0}, {"after-10-s", 10.0}};
+    for (const auto& [word, seconds] : left) {
+        if (name == word) {
+            return worst_left(s.nets[0], s.nets[1], seconds);
+        }
+    }
+    return no_fact(s, name);
+}
+
+value solved_supply::converter_fact(const std::string& name) const
+{
+    if (name == "set-point") {
+        return output_.output;
+    }
+    if (name == "feedback-lost") {
+        return truth_of(output_.feedback_lost);
+    }
+    if (name == "topology") {
+        return choice_of(output_.topology);
+    }
+    if (name == "isolates") {
+        return output_.topology == "boost" || output_.topology == "boost-multiplier" ? truth_of(false)
+                                                                                    : missing_value(value::type::truth, {"whether the converter isolates"});
+    }
+    return missing_value(value::type::number, {"converter." + name});
+}
+
+value solved_supply::look_up(const subject& s, state in, const std::string& name) const
+{
+    if (s.kind == "gap") {
+        return gap_fact(s, name);
+    }
+    if (s.kind == "net-pair") {
+        return pair_fact(s, name);
+    }
+    if (s.kind == "stored") {
+        return stored_fact(s, name);
+    }
+    if (s.kind == "access") {
+        return access_fact(s, in, name);
+    }
+    if (s.kind == "converter") {
+        return converter_fact(name);
+    }
+    if (s.kind == "supply") {
+        return supply_fact(name);
+    }
+    return part_fact(s, in, name);
+}
+
+value solved_supply::time_to(const subject& s, const quantity& limit) const
+{
+    if (s.nets.size() != 2) {
+        return missing_value(value::type::number, {s.name + " discharge"});
+    }
+    return worst_time(s.nets[0], s.nets[1], limit.si);
+}
+
+} // namespace onehand
