@@ -1,0 +1,299 @@
+#include "circuit/modes.hpp"
+
+#include <Eigen/Dense>
+#include <algorithm>
+#include <cmath>
+#include <limits>
+#include <numeric>
+
+namespace onehand::circuit {
+
+namespace {
+
+std::size_t at(int i)
+{
+    return static_cast<std::size_t>(i);
+}
+
+class union_find {
+public:
+    explicit union_find(int count) : parent_(at(count)) { std::iota(parent_.begin(), parent_.end(), 0); }
+    int root(int i)
+    {
+        while (parent_[at(i)] != i) {
+            i = parent_[at(i)];
+        }
+        return i;
+    }
+    void join(int a, int b) { parent_[at(root(b))] = root(a); }
+
+private:
+    std::vector<int> parent_;
+};
+
+bool present(double ohms)
+{
+    return std::isfinite(ohms);
+}
+
+constexpr double least_ohms = 1e-6;
+
+/// Matrices over the island's nodes, the reference node left out.
+struct matrices {
+    Eigen::MatrixXd incidence_r; // nodes x resistances, scaled by sqrt(g)
+    Eigen::MatrixXd incidence_c; // nodes x capacitors
+    Eigen::VectorXd farads;
+    std::vector<int> row_of; // -1: reference or not in the island
+    int zero_modes = 0;
+};
+
+matrices build(const rc_network& n, const rc_point& p, int reference)
+{
+    matrices m;
+    union_find by_r(n.nodes);
+    std::vector<bool> used(at(n.nodes), false);
+    for (std::size_t i = 0; i < n.resistances.size(); ++i) {
+        if (present(p.ohms[i])) {
+            by_r.join(n.resistances[i].a, n.resistances[i].b);
+        }
+        used[at(n.resistances[i].a)] = used[at(n.resistances[i].b)] = true;
+    }
+    union_find by_all = by_r;
+    for (const rc_capacitor& c : n.capacitors) {
+        by_all.join(c.plus, c.minus);
+        used[at(c.plus)] = used[at(c.minus)] = true;
+    }
+    used[at(reference)] = true;
+    m.row_of.assign(at(n.nodes), -1);
+    int rows = 0;
+    std::vector<int> roots_r;
+    std::vector<int> roots_all;
+    for (int i = 0; i < n.nodes; ++i) {
+        if (!used[at(i)]) {
+            continue;
+        }
+        roots_r.push_back(by_r.root(i));
+        roots_all.push_back(by_all.root(i));
+        if (i != reference) {
+            m.row_of[at(i)] = rows++;
+        }
+    }
+    for (auto* roots : {&roots_r, &roots_all}) {
+        std::sort(roots->begin(), roots->end());
+        roots->erase(std::unique(roots->begin(), roots->end()), roots->end());
+    }
+    // Groups that resistances join, less groups that anything joins: so many combinations of charge have nowhere to go.
+    m.zero_modes = static_cast<int>(roots_r.size()) - static_cast<int>(roots_all.size());
+    m.incidence_r = Eigen::MatrixXd::Zero(rows, static_cast<Eigen::Index>(n.resistances.size()));
+    m.incidence_c = Eigen::MatrixXd::Zero(rows, static_cast<Eigen::Index>(n.capacitors.size()));
+    m.farads.resize(static_cast<Eigen::Index>(n.capacitors.size()));
+    const auto stamp = [&](Eigen::MatrixXd& to, std::size_t column, int plus, int minus, double weight) {
+        if (m.row_of[at(plus)] >= 0) {
+            to(m.row_of[at(plus)], static_cast<Eigen::Index>(column)) += weight;
+        }
+        if (m.row_of[at(minus)] >= 0) {
+            to(m.row_of[at(minus)], static_cast<Eigen::Index>(column)) -= weight;
+        }
+    };
+    for (std::size_t i = 0; i < n.resistances.size(); ++i) {
+        if (present(p.ohms[i])) {
+            stamp(m.incidence_r, i, n.resistances[i].a, n.resistances[i].b, std::sqrt(1.0 / std::max(p.ohms[i], least_ohms)));
+        }
+    }
+    for (std::size_t i = 0; i < n.capacitors.size(); ++i) {
+        stamp(m.incidence_c, i, n.capacitors[i].plus, n.capacitors[i].minus, 1.0);
+        m.farads(static_cast<Eigen::Index>(i)) = p.farads[i];
+    }
+    return m;
+}
+
+bool tied(const rc_network& n, const rc_point& p, int a, int b)
+{
+    union_find joined(n.nodes);
+    for (std::size_t i = 0; i < n.resistances.size(); ++i) {
+        if (present(p.ohms[i])) {
+            joined.join(n.resistances[i].a, n.resistances[i].b);
+        }
+    }
+    for (const rc_capacitor& c : n.capacitors) {
+        joined.join(c.plus, c.minus);
+    }
+    return joined.root(a) == joined.root(b);
+}
+
+} // namespace
+
+rc_modes modes_of(const rc_network& n, const rc_point& p, int a, int b)
+{
+    rc_modes out;
+    if (a == b) {
+        return out;
+    }
+    if (!tied(n, p, a, b)) {
+        out.floating = true;
+        return out;
+    }
+    const matrices m = build(n, p, b);
+    const Eigen::Index rows = m.incidence_c.rows();
+    // C = Q diag(c) Q^T; columns of c = 0 carry no charge and follow the rest at once.
+    const Eigen::MatrixXd cap = m.incidence_c * m.farads.asDiagonal() * m.incidence_c.transpose();
+    const Eigen::SelfAdjointEigenSolver<Eigen::MatrixXd> by_c(cap);
+    const double largest = rows > 0 ? by_c.eigenvalues()(rows - 1) : 0.0;
+    if (!(largest > 0.0)) {
+        return out; // nothing stored: nothing there
+    }
+    Eigen::Index empty = 0;
+    while (empty < rows && by_c.eigenvalues()(empty) < 1e-13 * largest) {
+        ++empty;
+    }
+    const Eigen::MatrixXd q0 = by_c.eigenvectors().leftCols(empty);
+    const Eigen::MatrixXd q1 = by_c.eigenvectors().rightCols(rows - empty);
+    const Eigen::VectorXd root_c = by_c.eigenvalues().tail(rows - empty).cwiseSqrt();
+    const Eigen::MatrixXd half_g = m.incidence_r.transpose(); // sqrt(g) A^T
+    Eigen::MatrixXd carry = q1;
+    if (empty > 0) {
+        const Eigen::MatrixXd lone = half_g * q0;
+        carry -= q0 * lone.completeOrthogonalDecomposition().solve(half_g * q1);
+    }
+    const Eigen::MatrixXd one_sided = half_g * carry * root_c.cwiseInverse().asDiagonal();
+    const Eigen::JacobiSVD<Eigen::MatrixXd> svd(one_sided, Eigen::ComputeFullV);
+    const Eigen::Index modes = rows - empty;
+    const Eigen::MatrixXd v = svd.matrixV();
+    // z(0) = c^-1/2 Q1^T q with the charges q = A_c C u put on the nodes.
+    const Eigen::MatrixXd start = root_c.cwiseInverse().asDiagonal() * q1.transpose() * m.incidence_c * m.farads.asDiagonal();
+    const Eigen::RowVectorXd read = (carry * root_c.cwiseInverse().asDiagonal()).row(m.row_of[at(a)]);
+    for (Eigen::Index k = 0; k < modes; ++k) {
+        const double sigma = k < svd.singularValues().size() ? svd.singularValues()(k) : 0.0;
+        const bool kept = k >= modes - m.zero_modes;
+        out.rate.push_back(kept ? 0.0 : sigma * sigma);
+        const double reading = read * v.col(k);
+        const Eigen::RowVectorXd by_capacitor = reading * (v.col(k).transpose() * start);
+        out.share.emplace_back(by_capacitor.data(), by_capacitor.data() + by_capacitor.size());
+    }
+    return out;
+}
+
+double rc_modes::envelope(const std::vector<rc_capacitor>& capacitors, double seconds) const
+{
+    double high = 0.0;
+    double low = 0.0;
+    for (std::size_t c = 0; c < capacitors.size(); ++c) {
+        double factor = 0.0;
+        for (std::size_t k = 0; k < rate.size(); ++k) {
+            const double left = rate[k] == 0.0 ? 1.0 : std::isinf(seconds) ? 0.0 : std::exp(-rate[k] * seconds);
+            factor += share[k][c] * left;
+        }
+        const double x = factor * capacitors[c].volts.low;
+        const double y = factor * capacitors[c].volts.high;
+        high += std::max(x, y);
+        low += std::min(x, y);
+    }
+    return std::max(std::abs(high), std::abs(low));
+}
+
+rc_network island_of(const rc_network& n, int a, int b)
+{
+    union_find joined(n.nodes);
+    for (const rc_resistance& r : n.resistances) {
+        joined.join(r.a, r.b);
+    }
+    for (const rc_capacitor& c : n.capacitors) {
+        joined.join(c.plus, c.minus);
+    }
+    const auto near = [&](int node) { return joined.root(node) == joined.root(a) || joined.root(node) == joined.root(b); };
+    rc_network out;
+    out.nodes = n.nodes;
+    for (const rc_resistance& r : n.resistances) {
+        if (near(r.a)) {
+            out.resistances.push_back(r);
+        }
+    }
+    for (const rc_capacitor& c : n.capacitors) {
+        if (near(c.plus)) {
+            out.capacitors.push_back(c);
+        }
+    }
+    return out;
+}
+
+int keeper_of(const rc_network& n, const rc_point& p)
+{
+    union_find joined(n.nodes);
+    for (std::size_t i = 0; i < n.resistances.size(); ++i) {
+        if (present(p.ohms[i])) {
+            joined.join(n.resistances[i].a, n.resistances[i].b);
+        }
+    }
+    for (std::size_t i = 0; i < n.capacitors.size(); ++i) {
+        if (joined.root(n.capacitors[i].plus) != joined.root(n.capacitors[i].minus)) {
+            return static_cast<int>(i);
+        }
+    }
+    return -1;
+}
+
+namespace {
+
+/// The turning point of the envelope between two times, by bisection on its slope's sign.
+double turning_point(const rc_modes& m, const std::vector<rc_capacitor>& capacitors, double from, double to)
+{
+    for (int i = 0; i < 60; ++i) {
+        const double one = from + (to - from) / 3.0;
+        const double two = to - (to - from) / 3.0;
+        (m.envelope(capacitors, one) < m.envelope(capacitors, two) ? from : to) = m.envelope(capacitors, one) < m.envelope(capacitors, two) ? one : two;
+    }
+    return 0.5 * (from + to);
+}
+
+double crossing(const rc_modes& m, const std::vector<rc_capacitor>& capacitors, double limit, double above, double below)
+{
+    for (int i = 0; i < 200 && below - above > 1e-14 * below; ++i) {
+        const double middle = 0.5 * (above + below);
+        (m.envelope(capacitors, middle) > limit ? above : below) = middle;
+    }
+    return below;
+}
+
+} // namespace
+
+double last_time(const rc_modes& m, const std::vector<rc_capacitor>& capacitors, double limit)
+{
+    if (m.envelope(capacitors, std::numeric_limits<double>::infinity()) > limit) {
+        return std::numeric_limits<double>::infinity();
+    }
+    double slow = std::numeric_limits<double>::infinity();
+    double fast = 0.0;
+    for (const double r : m.rate) {
+        if (r > 0.0) {
+            slow = std::min(slow, r);
+            fast = std::max(fast, r);
+        }
+    }
+    if (fast == 0.0) {
+        return 0.0;
+    }
+    constexpr int steps = 400;
+    const double first = 1e-3 / fast;
+    const double end = 800.0 / slow;
+    const double factor = std::pow(end / first, 1.0 / steps);
+    std::vector<double> times{0.0};
+    for (int i = 0; i <= steps; ++i) {
+        times.push_back(first * std::pow(factor, i));
+    }
+    // From the far end back: the first sample, or hump between samples, above the limit.
+    for (std::size_t i = times.size() - 1; i-- > 0;) {
+        if (m.envelope(capacitors, times[i]) > limit) {
+            return crossing(m, capacitors, limit, times[i], times[i + 1]);
+        }
+        const bool hump = i > 0 && m.envelope(capacitors, times[i]) >= m.envelope(capacitors, times[i - 1]) && m.envelope(capacitors, times[i]) >= m.envelope(capacitors, times[i + 1]);
+        if (hump) {
+            const double top = turning_point(m, capacitors, times[i - 1], times[i + 1]);
+            if (m.envelope(capacitors, top) > limit) {
+                return crossing(m, capacitors, limit, top, times[i + 1]);
+            }
+        }
+    }
+    return 0.0;
+}
+
+} // namespace onehand::circuit
