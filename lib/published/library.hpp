@@ -59,6 +59,13 @@ struct table {
     std::vector<double> axis;                      // SI, ascending or descending as printed
     std::vector<std::string> choices;              // by_choice
     std::vector<std::vector<std::vector<double>>> cells; // [row][column] -> SI values (none, one, or several where sources disagree)
+    struct check {
+        std::string at;      // axis value or choice
+        std::string column;
+        std::string gives;   // empty: must be refused
+        place where;
+    };
+    std::vector<check> checks;
     place at;
 };
 
@@ -89,6 +96,7 @@ struct field_spec {
     std::string column;
     bool limit_is_low = true;       // the worst end of several published values: low for a rating
     std::string bounds;             // which fact this rating bounds: "voltage", "power", "current"
+    std::string per;                // may be written per this other field (a cable's capacitance per length)
     place at;
 };
 
@@ -96,7 +104,7 @@ struct field_spec {
 struct terminal_key {
     std::string key;    // "nets", "ends", "anode", "cathodes", "poles", "wiper"
     int count = 1;      // 1: one net as text; n > 1: an array of n nets; 0: an array of one or more nets; -1: an array of pairs (connector poles)
-    std::vector<std::string> names; // canonical terminal names it fills ("first","second"; "end-1","end-2"; "anode"; for 0: stem, "cathode" -> "cathode", "cathode-2", ...; for -1 stems of both sides)
+    std::vector<std::string> names; // canonical terminal names it fills ("first","second"); a star is replaced by 1, 2, ... ("cathode-*")
     bool optional = false;
 };
 struct terminal_form {
@@ -107,7 +115,7 @@ struct terminal_form {
 /// One ideal element between two canonical terminals, as solved in given states.
 struct element_spec {
     enum class form { open, closed, resistance, clamp, current, capacitance, inductance, track };
-    std::string from;                 // canonical terminal name
+    std::string from;                 // canonical terminal name; with a star it stands once for each that is there
     std::string to;
     std::vector<form> forms;          // several: any one of them may be the case (a tube dark or lit)
     std::map<std::string, std::string> field; // form name -> field that gives its value ("resistance" -> "value")
@@ -131,6 +139,7 @@ struct kind_spec {
     std::vector<field_spec> fields;
     std::vector<element_spec> elements;
     std::vector<failure_spec> failures;
+    std::string main_field;    // what --set R9=470k sets: the first quantity
     std::string voltage_from;  // canonical terminals its `voltage` fact is told between
     std::string voltage_to;
     place at;
