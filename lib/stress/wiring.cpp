@@ -43,14 +43,24 @@ std::vector<element_spec> specs_of(const part& p, const kind_spec& kind)
     return specs;
 }
 
-std::optional<element> element_from(const element_spec& spec, const part& p, const kind_spec& kind, const library& lib)
+std::string at_number(const std::string& name, int number)
 {
-    const std::string& from = p.net(spec.from);
-    const std::string& to = p.net(spec.to);
+    const std::size_t star = name.find('*');
+    return star == std::string::npos ? name : name.substr(0, star) + std::to_string(number) + name.substr(star + 1);
+}
+
+std::optional<element> element_from(const element_spec& spec, int index, const part& p, const kind_spec& kind, const library& lib)
+{
+    const std::string from_name = at_number(spec.from, index);
+    const std::string to_name = at_number(spec.to, index);
+    const std::string& from = p.net(from_name);
+    const std::string& to = p.net(to_name);
     if (from.empty() || to.empty()) {
         return std::nullopt;
     }
-    element e{p.ref, from, to, spec.forms, {}, {}, {}, spec.holds_charge_path, spec.from == kind.voltage_from && spec.to == kind.voltage_to};
+    const bool main = from_name == kind.voltage_from && to_name == kind.voltage_to;
+    const bool turned = from_name == kind.voltage_to && to_name == kind.voltage_from;
+    element e{p.ref, from, to, spec.forms, {}, {}, {}, spec.holds_charge_path, main || turned};
     for (const form f : spec.forms) {
         if (const auto named = spec.field.find(form_name(f)); named != spec.field.end()) {
             e.values[f] = field_value(p, kind, lib, named->second);
@@ -74,9 +84,19 @@ std::vector<element> elements_of(const part& p, const library& lib, state in)
         return list;
     }
     for (const element_spec& spec : specs_of(p, *kind)) {
-        if (applies(spec, in)) {
-            if (auto e = element_from(spec, p, *kind, lib)) {
-                list.push_back(std::move(*e));
+        if (!applies(spec, in)) {
+            continue;
+        }
+        // A starred terminal stands once for each that is there.
+        const bool starred = spec.from.find('*') != std::string::npos || spec.to.find('*') != std::string::npos;
+        for (int number = 1;; ++number) {
+            auto e = element_from(spec, number, p, *kind, lib);
+            if (!e) {
+                break;
+            }
+            list.push_back(std::move(*e));
+            if (!starred) {
+                break;
             }
         }
     }

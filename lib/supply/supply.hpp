@@ -103,7 +103,7 @@ struct converter {
     std::map<std::string, field> fields;   // output-voltage, source-resistance, power-limit, internal-capacitance, internal-bleeder, spike ...
     place at;
 
-    const field* find(const std::string& name) const;
+    const field* find(const std::string& key) const;
 };
 
 struct protection {
@@ -127,7 +127,7 @@ struct supply {
     std::vector<access> accesses;  // empty: every net, cover off
     std::vector<decay> decays;
     protection guarded;
-    std::vector<std::string> nets; // every net named, in order of first naming
+    std::vector<std::string> nets; // every net named, in order of first naming; the inner nets of strings are not among them
     std::map<std::string, place> net_at;
 
     const part* find_part(const std::string& ref) const;
@@ -142,6 +142,9 @@ struct supply_result {
 /// Reads and checks a whole description; every mistake of meaning in one run. `settings` are --set edits ("R9=470k", "R9.value=470k", "use.altitude=2500 m"), applied before checking;
 /// a mistake in one is a complaint in file "--set".
 supply_result read_supply(const document& doc, const library& lib, const std::vector<std::string>& settings = {});
+
+/// Every part with series or parallel above one becomes single bodies, R7/1, R7/2 ...; the nets between bodies are R7~1 ... and appear in no list of nets.
+supply expand_bodies(const supply& s);
 
 /// R2 before R10, R7/1 before R7/2.
 bool natural_less(const std::string& a, const std::string& b);

@@ -1,0 +1,174 @@
+#include "stress/rail.hpp"
+
+#include "quantity/text.hpp"
+#include "stress/dc_network.hpp"
+#include "stress/spread_math.hpp"
+
+#include <algorithm>
+#include <fmt/format.h>
+
+namespace onehand {
+
+namespace {
+
+constexpr double unsaid_spike = 0.30;   // of the rail: common practice, no source
+constexpr double rectifier_drop = 1.5;  // volt at most across rectifier and coil when settled: common practice, no source
+
+bool by_feedback(const converter& c)
+{
+    return !c.feedback_net.empty() && c.feedback.contains("threshold");
+}
+
+std::string end_name(const dc_network& n, const circuit::output_end& e)
+{
+    using of = circuit::output_end::of;
+    const auto element_of = [&](const std::vector<int>& index) {
+        const auto it = std::find(index.begin(), index.end(), e.index);
+        return it == index.end() ? std::string("?") : n.elements[static_cast<std::size_t>(it - index.begin())].ref;
+    };
+    switch (e.what) {
+    case of::branch: return element_of(n.branch_of);
+    case of::track: return element_of(n.track_of) + " track";
+    case of::track_position: return element_of(n.track_of) + " wiper";
+    case of::threshold: return "threshold";
+    case of::bias: return "bias current";
+    case of::source: return static_cast<std::size_t>(e.index) < n.source_names.size() ? n.source_names[static_cast<std::size_t>(e.index)] : "a held net";
+    }
+    return "?";
+}
+
+std::string end_word(char c)
+{
+    return c == 'l' ? "low" : c == 'h' ? "high" : "inside";
+}
+
+/// The set point from the feedback net: the output that holds the threshold, at its worst.
+void find_set_point(const supply& s, const library& lib, rail& r)
+{
+    r.basis = "held by " + s.stage->feedback_net;
+    const dc_network whole = build_network(s, lib, r, state::no_load, over::whole, true);
+    const circuit::solution at_worst = circuit::solve(whole.net);
+    const circuit::solution in_use = circuit::solve(build_network(s, lib, r, state::no_load, over::in_use, true).net);
+    std::vector<std::string> missing;
+    for (const std::string& net : {s.stage->feedback_net}) {
+        if (const auto it = whole.missing.find(whole.node.at(net)); it != whole.missing.end()) {
+            missing = it->second;
+        }
+    }
+    if (at_worst.feedback_lost) {
+        r.feedback_lost = missing.empty();
+        r.lost_why = "at some setting " + s.stage->feedback_net + " no longer depends on the output, or no output holds it";
+        r.output = missing_value(value::type::number, missing.empty() ? std::vector<std::string>{"a set point: feedback is lost at some setting"} : missing);
+        return;
+    }
+    r.output = to_value(in_use.output, at_worst.output, dim::voltage);
+    r.output.missing = missing;
+    for (const circuit::output_end& e : at_worst.set_by) {
+        r.set_by.push_back({end_name(whole, e), end_word(e.at_low), end_word(e.at_high)});
+    }
+    r.output.shown.formula = "the output at which V(" + s.stage->feedback_net + ") = threshold, nodal solve";
+    const field& threshold = s.stage->feedback.at("threshold");
+    r.output.shown.inputs.push_back(input_of("threshold", threshold));
+    for (const rail::end& e : r.set_by) {
+        const part* p = s.find_part(e.part.substr(0, e.part.find(' ')));
+        if (p == nullptr) {
+            continue;
+        }
+        if (const field* f = p->find("value")) {
+            r.output.shown.inputs.push_back(input_of(p->ref + ".value", *f));
+        }
+    }
+}
+
+void find_output(const supply& s, const library& lib, rail& r)
+{
+    const converter& c = *s.stage;
+    if (const field* declared = c.find("output-voltage")) {
+        r.output = number(*declared->number());
+        r.output.shown = {"as declared", {input_of(c.name + ".output-voltage", *declared)}, false, 0.0};
+        r.basis = "as declared";
+    } else if (by_feedback(c)) {
+        find_set_point(s, lib, r);
+    } else {
+        r.output = missing_value(value::type::number, {c.name + ".output-voltage, or feedback with its threshold"});
+    }
+}
+
+/// Stage stopped and settled: a boost rail stays near the input, the others anywhere up to their output.
+void find_standby(const supply& s, rail& r)
+{
+    const value in = written_value(s.fed.voltage, value::type::number, "input.voltage");
+    if (r.topology != "boost") {
+        r.standby = r.output;
+        for (spread& v : r.standby.numbers) {
+            v.in_use.low = v.whole.low = 0.0;
+            v.nominal.reset();
+        }
+        return;
+    }
+    r.standby = in;
+    for (spread& v : r.standby.numbers) {
+        v.in_use.low = std::max(0.0, v.in_use.low - rectifier_drop);
+        v.whole.low = std::max(0.0, v.whole.low - rectifier_drop);
+        v.nominal.reset();
+    }
+    r.standby.shown.formula = "input through coil and rectifier";
+}
+
+void find_peak(const supply& s, rail& r)
+{
+    const converter& c = *s.stage;
+    if (r.topology != "boost") {
+        r.peak = missing_value(value::type::number, {"the switch voltage of a " + r.topology + " stage"});
+        return;
+    }
+    const field* spike = c.find("spike");
+    const value ringing = spike != nullptr ? number(*spike->number()) : product(r.output, number(exactly({unsaid_spike, dim::none})));
+    r.peak = sum(r.output, ringing);
+    for (spread& v : r.peak.numbers) {
+        v.dim = dim::voltage;
+    }
+    r.peak.shown.inputs = r.output.shown.inputs;
+    if (spike != nullptr) {
+        r.peak.shown.formula = "rail + spike";
+        r.peak.shown.inputs.push_back(input_of(c.name + ".spike", *spike));
+    } else {
+        r.peak.shown.formula = "rail + 30 % of it";
+        r.peak.assumed.push_back("a spike of 30 % of the rail on " + (r.switch_net.empty() ? std::string("the switch") : r.switch_net) + " (" + c.name + ".spike unsaid; practice)");
+    }
+}
+
+} // namespace
+
+rail find_rail(const supply& s, const library& lib)
+{
+    rail r;
+    if (!s.stage) {
+        r.output = missing_value(value::type::number, {"a [converter]"});
+        r.standby = r.peak = r.output;
+        return r;
+    }
+    const converter& c = *s.stage;
+    r.topology = c.topology;
+    if (c.outputs.size() == 2) {
+        r.positive = c.outputs[0];
+        r.negative = c.outputs[1];
+    }
+    for (const std::string& ref : {c.power_switch, c.rectifier}) {
+        if (!ref.empty()) {
+            r.stage_parts.push_back(ref);
+        }
+    }
+    const part* power_switch = s.find_part(c.power_switch);
+    r.gate_net = c.gate;
+    find_output(s, lib, r);
+    find_standby(s, r);
+    if (power_switch != nullptr && r.topology == "boost") {
+        r.switch_net = power_switch->terminals.front().net;
+        r.switch_return = power_switch->terminals.back().net;
+    }
+    find_peak(s, r);
+    return r;
+}
+
+} // namespace onehand
