@@ -54,6 +54,23 @@ std::vector<path> soldered(const supply& s, const std::vector<element>& off)
     return list;
 }
 
+/// Greatest conductance that the soldered paths can have between two nets: the current that one volt drives.
+double conductance_at_most(const std::vector<path>& paths, const std::string& a, const std::string& b)
+{
+    circuit::network n;
+    std::map<std::string, int> node{{b, 0}};
+    const auto at = [&](const std::string& net) { return node.emplace(net, static_cast<int>(node.size())).first->second; };
+    for (const path& p : paths) {
+        n.branches.push_back({at(p.a), at(p.b), {{circuit::form::resistance, {p.ohms.whole.low, p.ohms.whole.high}}}});
+    }
+    constexpr double probe = 1e-3; // ohm
+    const int feed = at("~feed");
+    n.branches.push_back({feed, at(a), {{circuit::form::resistance, {probe, probe}}}});
+    n.sources.push_back({feed, 0, {1.0, 1.0}});
+    n.nodes = static_cast<int>(node.size());
+    return std::max(0.0, circuit::solve(n).current.back().high);
+}
+
 /// What a measured discharge says of the capacitance between its nets, given the conductance that is known there (no inner bleeder counted unless written).
 value capacitance_from_decay(const supply& s, const std::vector<path>& paths, const charged_capacitor& inside)
 {
@@ -62,12 +79,8 @@ value capacitance_from_decay(const supply& s, const std::vector<path>& paths, co
         if (!same) {
             continue;
         }
-        double siemens = 0.0;
-        for (const path& p : paths) {
-            // A string's bodies meet in inner nets; its total counts through the reader's own path sum below.
-            const bool direct = (p.a == inside.positive && p.b == inside.negative) || (p.a == inside.negative && p.b == inside.positive);
-            siemens += direct ? 1.0 / p.ohms.whole.low : 0.0;
-        }
+        // The conductance at its greatest: a smaller one would tell less capacitance than there may be.
+        double siemens = conductance_at_most(paths, inside.positive, inside.negative);
         siemens += d.meter && d.meter->number()->whole.low > 0.0 ? 1.0 / d.meter->number()->whole.low : 0.0;
         const double tau = d.time->number()->whole.high / std::log(d.from->number()->whole.low / d.to->number()->whole.high);
         value v = number(between(dim::capacitance, 0.0, tau * siemens));
@@ -267,6 +280,7 @@ decay_network::decay_network(const supply& s, const library& lib, const std::vec
     inside_->net.nodes = static_cast<int>(inside_->node.size());
     if (s.fed.voltage && s.fed.voltage->number() != nullptr && s.stage && s.stage->topology == "boost") {
         inside_->input_volts = s.fed.voltage->number()->whole.high;
+        inside_->rectifier_to = inside_->root(s.stage->outputs[0]);
     }
 }
 
@@ -338,7 +352,8 @@ value decay_network::left_after(const std::string& a, const std::string& b, doub
     value v = from_figure(f, dim::voltage, fmt::format("greatest |V({}) - V({})| after {} s", a, b, seconds));
     // The rectifier may refill from the input side up to the input's own voltage.
     for (spread& s : v.numbers) {
-        s.in_use.high = std::max(s.in_use.high, std::min(inside_->input_volts, s.whole.high + inside_->input_volts));
+        const bool rail = inside_->root(a) == inside_->rectifier_to || inside_->root(b) == inside_->rectifier_to;
+        s.in_use.high = std::max(s.in_use.high, rail ? inside_->input_volts : 0.0);
         s.whole.high = std::max(s.whole.high, s.in_use.high);
     }
     for (const std::string& net : {a, b}) {

@@ -1,0 +1,46 @@
+#pragma once
+// Compiled rules and classes. Inside the room only.
+#include "rule/expression.hpp"
+#include "rule/rules.hpp"
+
+namespace onehand {
+
+struct rule_example {
+    std::string name;
+    std::string verdict;
+    std::vector<std::string> missing;
+    std::vector<std::pair<std::string, std::string>> given; // as written
+    place at;
+};
+
+struct rule {
+    rule_view shown;
+    std::vector<state> states;
+    std::vector<std::string> changes{"none"};
+    std::optional<expression> when, require, advise;
+    std::vector<rule_example> examples;
+    std::string names;         // a shop rule: the published rule it stands beside
+    std::string settles;       // the measurement or datum that settles a marginal or a not-shown; empty: told from what is missing
+    bool gather = false;
+};
+
+struct compiled_class {
+    class_text text;
+    std::vector<state> states;
+    std::vector<expression> holds;
+};
+
+struct rule_set {
+    std::vector<rule> rules;           // by id
+    std::vector<compiled_class> classes;
+};
+
+/// The classes of a subject in a state: id -> name, empty where it is not shown.
+std::map<std::string, std::string> classes_of(const rule_set& set, const library& lib, const subject& about, state in, const fact_source& facts,
+                                              std::vector<class_told>* told);
+
+/// One rule on one subject in one state.
+finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts, const std::map<std::string, std::string>& classes,
+                  const std::string& derating);
+
+} // namespace onehand
