@@ -204,7 +204,8 @@ rc_figure last_time_above(const rc_network& whole, int a, int b, double limit)
         rc_figure out;
         out.never = true;
         out.value = infinity;
-        out.keeper = keeper_of(n, middle_of(n, true));
+        const int keeper = keeper_of(n, middle_of(n, true));
+        out.keeper = keeper < 0 ? -1 : n.original[static_cast<std::size_t>(keeper)];
         return out;
     }
     return settle(found, certified_time(n, a, b, limit), proved);

@@ -26,6 +26,7 @@ struct rc_network {
     int nodes = 1;
     std::vector<rc_resistance> resistances;
     std::vector<rc_capacitor> capacitors;
+    std::vector<int> original; // of a part of a network: the capacitors' places in the whole
 };
 
 /// A worst-case figure. `floating`: the pair is tied by nothing, there is no figure.

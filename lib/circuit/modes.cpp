@@ -84,7 +84,8 @@ matrices build(const rc_network& n, const rc_point& p, int reference)
     }
     // Groups that resistances join, less groups that anything joins: so many combinations of charge have nowhere to go.
     m.zero_modes = static_cast<int>(roots_r.size()) - static_cast<int>(roots_all.size());
-    m.incidence_r = Eigen::MatrixXd::Zero(rows, static_cast<Eigen::Index>(n.resistances.size()));
+    // At least as many columns as nodes, so that the singular vectors span all modes even with few resistances.
+    m.incidence_r = Eigen::MatrixXd::Zero(rows, std::max<Eigen::Index>(rows, static_cast<Eigen::Index>(n.resistances.size())));
     m.incidence_c = Eigen::MatrixXd::Zero(rows, static_cast<Eigen::Index>(n.capacitors.size()));
     m.farads.resize(static_cast<Eigen::Index>(n.capacitors.size()));
     const auto stamp = [&](Eigen::MatrixXd& to, std::size_t column, int plus, int minus, double weight) {
@@ -191,26 +192,64 @@ double rc_modes::envelope(const std::vector<rc_capacitor>& capacitors, double se
     return std::max(std::abs(high), std::abs(low));
 }
 
-rc_network island_of(const rc_network& n, int a, int b)
+namespace {
+
+/// Nodes that can be reached from `start` without passing `cut`, over all elements and a link from a to b.
+std::vector<bool> reached(const rc_network& n, int a, int b, int start, int cut)
 {
-    union_find joined(n.nodes);
-    for (const rc_resistance& r : n.resistances) {
-        joined.join(r.a, r.b);
-    }
-    for (const rc_capacitor& c : n.capacitors) {
-        joined.join(c.plus, c.minus);
-    }
-    const auto near = [&](int node) { return joined.root(node) == joined.root(a) || joined.root(node) == joined.root(b); };
-    rc_network out;
-    out.nodes = n.nodes;
-    for (const rc_resistance& r : n.resistances) {
-        if (near(r.a)) {
-            out.resistances.push_back(r);
+    std::vector<bool> seen(at(n.nodes), false);
+    std::vector<int> todo{start};
+    seen[at(start)] = true;
+    const auto link = [&](int x, int y, int here) {
+        for (const auto& [from, to] : {std::pair(x, y), std::pair(y, x)}) {
+            if (from == here && to != cut && !seen[at(to)]) {
+                seen[at(to)] = true;
+                todo.push_back(to);
+            }
+        }
+    };
+    while (!todo.empty()) {
+        const int here = todo.back();
+        todo.pop_back();
+        link(a, b, here);
+        for (const rc_resistance& r : n.resistances) {
+            link(r.a, r.b, here);
+        }
+        for (const rc_capacitor& c : n.capacitors) {
+            link(c.plus, c.minus, here);
         }
     }
-    for (const rc_capacitor& c : n.capacitors) {
-        if (near(c.plus)) {
-            out.capacitors.push_back(c);
+    return seen;
+}
+
+} // namespace
+
+rc_network island_of(const rc_network& n, int a, int b)
+{
+    // What hangs on the rest by one node alone cannot influence the pair: for every node taken out, only what still joins a or b counts.
+    std::vector<bool> counts_r(n.resistances.size(), true);
+    std::vector<bool> counts_c(n.capacitors.size(), true);
+    for (int cut = 0; cut < n.nodes; ++cut) {
+        const std::vector<bool> seen = reached(n, a, b, cut == a ? b : a, cut);
+        const auto near = [&](int x, int y) { return (x == cut || seen[at(x)]) && (y == cut || seen[at(y)]); };
+        for (std::size_t i = 0; i < n.resistances.size(); ++i) {
+            counts_r[i] = counts_r[i] && near(n.resistances[i].a, n.resistances[i].b);
+        }
+        for (std::size_t i = 0; i < n.capacitors.size(); ++i) {
+            counts_c[i] = counts_c[i] && near(n.capacitors[i].plus, n.capacitors[i].minus);
+        }
+    }
+    rc_network out;
+    out.nodes = n.nodes;
+    for (std::size_t i = 0; i < n.resistances.size(); ++i) {
+        if (counts_r[i] && n.resistances[i].a != n.resistances[i].b) {
+            out.resistances.push_back(n.resistances[i]);
+        }
+    }
+    for (std::size_t i = 0; i < n.capacitors.size(); ++i) {
+        if (counts_c[i] && n.capacitors[i].plus != n.capacitors[i].minus) {
+            out.capacitors.push_back(n.capacitors[i]);
+            out.original.push_back(static_cast<int>(i));
         }
     }
     return out;

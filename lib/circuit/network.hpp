@@ -18,7 +18,7 @@ struct box {
 
 enum class form { open, closed, resistance, clamp, current };
 
-/// One form that a branch may take: ohm, volt (from above to) or ampere (from -> to).
+/// One form that a branch may take: ohm, volt (from above to; it carries current from -> to only, and stands beside `open`) or ampere (from -> to).
 struct option {
     form is = form::open;
     box at;

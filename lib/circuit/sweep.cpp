@@ -151,12 +151,36 @@ private:
             for (std::size_t f = 0; f < p_.figures.size(); ++f) {
                 if (!c.samples[0].form[f].empty()) {
                     told[f] = extreme_of(c, f, columns);
+                }
+            }
+            if (against_a_clamp(chosen, told)) {
+                if (keep != nullptr) {
+                    keep->volts.emplace_back(p_.part->branches.size(), 0.0);
+                }
+                continue;
+            }
+            for (std::size_t f = 0; f < p_.figures.size(); ++f) {
+                if (!c.samples[0].form[f].empty()) {
                     widen(out_.by_globals[f][globals], told[f].low, told[f].high);
                 }
             }
             note_power(c, chosen, told, keep);
             note_track_power(c, chosen, columns);
         }
+    }
+
+    /// A clamp conducts one way only. Where its current would run backwards it is open; the boundary between the two is a point of the open case, which is visited as such.
+    bool against_a_clamp(const choice& chosen, const std::vector<travel_extreme>& told) const
+    {
+        for (std::size_t f = 0; f < p_.figures.size(); ++f) {
+            if (p_.figures[f].what == component_plan::figure::of::through) {
+                const auto b = at(p_.figures[f].a);
+                if (p_.states[b][at(chosen[b])].is == form::clamp && told[f].high < 0.0) {
+                    return true;
+                }
+            }
+        }
+        return false;
     }
 
     void note_output(const corner& c, const choice& chosen, const std::vector<double>& columns)

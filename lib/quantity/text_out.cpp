@@ -26,7 +26,7 @@ struct printed_unit {
 std::optional<printed_unit> unit_for(const dimension& d)
 {
     if (d == dim::length) {
-        return printed_unit{"m", true, -6, 0}; // millimetres and metres, no kilometres
+        return printed_unit{"m", true, -3, 0}; // millimetres and metres
     }
     if (d == dim::temperature) {
         return printed_unit{"degC", false, 0, 0};

@@ -51,11 +51,49 @@ bool conditional(const finding& f, const std::string& on)
     return f.judged == verdict::not_shown || f.judged == verdict::marginal || (f.judged == verdict::fail && after_fault(f));
 }
 
-std::string condition_line(const finding& f)
+std::string named(const finding& f)
 {
-    const std::string what = f.about.kind == "supply" ? f.title : f.about.name + ": " + f.title;
-    return f.settles.empty() ? what : what + " - " + f.settles;
+    return f.about.kind == "supply" ? f.title : f.about.name + ", " + f.title;
 }
+
+/// One line a thing to settle: findings that the same measurement or datum settles stand together.
+class condition_list {
+public:
+    void add(const finding& f)
+    {
+        const std::string how = f.settles.empty() ? f.remedy : f.settles;
+        for (auto& [settles, about] : lines_) {
+            if (settles == how) {
+                add_once(about, named(f));
+                return;
+            }
+        }
+        lines_.push_back({how, {named(f)}});
+    }
+
+    std::vector<std::string> lines() const
+    {
+        std::vector<std::string> out;
+        for (const auto& [settles, about] : lines_) {
+            std::string line = settles + " (" + about.front();
+            for (std::size_t i = 1; i < about.size(); ++i) {
+                line += "; " + about[i];
+            }
+            out.push_back(line + ")");
+        }
+        return out;
+    }
+
+private:
+    static void add_once(std::vector<std::string>& list, std::string line)
+    {
+        if (std::find(list.begin(), list.end(), line) == list.end()) {
+            list.push_back(std::move(line));
+        }
+    }
+
+    std::vector<std::pair<std::string, std::vector<std::string>>> lines_;
+};
 
 void add_once(std::vector<std::string>& list, std::string line)
 {
@@ -91,6 +129,7 @@ conclusions conclude(const std::vector<finding>& findings, bool waiting_time_kno
     c.energise = "no-objection";
     c.reach_in = "only-after";
     c.time_known = waiting_time_known;
+    condition_list conditions;
     for (const finding& f : findings) {
         const bool energise = holds(f, "energise");
         const bool reach_in = holds(f, "reach-in");
@@ -104,14 +143,15 @@ conclusions conclude(const std::vector<finding>& findings, bool waiting_time_kno
             add_once(c.because, f.id);
         } else if (conditional(f, "energise")) {
             c.energise = c.energise == "hold" ? "hold" : "conditional";
-            add_once(c.conditions, condition_line(f));
+            conditions.add(f);
         } else if (conditional(f, "reach-in")) {
-            add_once(c.conditions, condition_line(f));
+            conditions.add(f);
         }
         if (bears(f, "reach-in") && only_time_missing(f)) {
             c.time_known = false;
         }
     }
+    c.conditions = conditions.lines();
     c.first = first_steps(findings, c);
     return c;
 }

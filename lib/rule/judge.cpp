@@ -1,6 +1,7 @@
 #include "rule/rule_set.hpp"
 
 #include "quantity/text.hpp"
+#include "supply/supply.hpp"
 
 #include <algorithm>
 #include <cmath>
@@ -151,7 +152,7 @@ std::string settling(const rule& r, const finding& f)
         return r.settles.empty() ? "give figures that are known on both sides" : r.settles;
     }
     if (f.judged == verdict::marginal && f.marginal_by == "assumption") {
-        return r.settles.empty() ? "replace the assumption by a figure: " + joined(f.assumed) : r.settles;
+        return "write a figure in place of what is assumed: " + joined(f.assumed);
     }
     if (f.judged != verdict::marginal) {
         return {};
@@ -261,6 +262,10 @@ finding judge_one(const rule& r, const library& lib, const subject& about, state
             }
         }
         f.judged = verdict_for(t, r.shown.protects_person, f.marginal_by);
+        if (f.judged == verdict::fail && r.at_worst != verdict::fail) {
+            f.judged = r.at_worst;
+            f.marginal_by = r.at_worst == verdict::marginal ? "tolerance" : "";
+        }
         f.missing = f.judged == verdict::fail ? std::vector<std::string>{} : t.missing;
         f.assumed = t.assumed;
     } else {
@@ -283,34 +288,6 @@ bool in_force(const rule& r, const judging_options& options)
     return r.shown.limit_set == "practice" || std::find(options.limit_sets.begin(), options.limit_sets.end(), r.shown.limit_set) != options.limit_sets.end();
 }
 
-int natural_order(const std::string& a, const std::string& b)
-{
-    // R2 before R10: digits by length, then by value.
-    std::size_t i = 0;
-    std::size_t j = 0;
-    const auto digit = [](char c) { return c >= '0' && c <= '9'; };
-    while (i < a.size() && j < b.size()) {
-        if (digit(a[i]) && digit(b[j])) {
-            const std::size_t m = std::min(a.find_first_not_of("0123456789", i), a.size());
-            const std::size_t n = std::min(b.find_first_not_of("0123456789", j), b.size());
-            if (m - i != n - j) {
-                return m - i < n - j ? -1 : 1;
-            }
-            if (const int c = a.compare(i, m - i, b, j, n - j); c != 0) {
-                return c;
-            }
-            i = m;
-            j = n;
-        } else if (a[i] != b[j]) {
-            return a[i] < b[j] ? -1 : 1;
-        } else {
-            ++i;
-            ++j;
-        }
-    }
-    return static_cast<int>(a.size() - i) - static_cast<int>(b.size() - j);
-}
-
 bool graver(const finding& a, const finding& b)
 {
     if (a.judged != b.judged) {
@@ -322,8 +299,8 @@ bool graver(const finding& a, const finding& b)
     if (a.rule != b.rule) {
         return a.rule < b.rule;
     }
-    if (const int c = natural_order(a.about.name, b.about.name); c != 0) {
-        return c < 0;
+    if (a.about.name != b.about.name) {
+        return natural_less(a.about.name, b.about.name);
     }
     return a.in < b.in;
 }

@@ -10,7 +10,7 @@ namespace {
 
 const std::vector<std::string> subject_words{"gap", "net-pair", "stored", "access", "converter", "supply"};
 const std::vector<std::string> keys{"title", "subject", "states", "changes", "protects", "bears-on", "signal", "when", "require", "advise", "message", "why", "remedy",
-                                    "settles", "source", "example", "gather", "names"};
+                                    "settles", "source", "example", "gather", "names", "at-worst"};
 
 std::string stem(const std::string& file)
 {
@@ -48,6 +48,12 @@ public:
         r_.shown.remedy = text("remedy", true);
         r_.settles = text("settles", false);
         r_.names = text("names", false);
+        if (const entry* e = find("at-worst", node_kind::text, "marginal or not-shown")) {
+            r_.at_worst = e->value.text == "marginal" ? verdict::marginal : verdict::not_shown;
+            if (e->value.text != "marginal" && e->value.text != "not-shown") {
+                complain(e->value.at, "'at-worst' is marginal or not-shown");
+            }
+        }
         if (const entry* e = find("gather", node_kind::truth, "true or false")) {
             r_.gather = e->value.truth;
         }
@@ -227,7 +233,7 @@ private:
     void one_comparison(const char* key, const std::optional<expression>& e)
     {
         using op = expression::op;
-        if (e && (e->is == op::logic_and || e->is == op::logic_or || e->is == op::logic_not)) {
+        if (e && (e->is == op::logic_and || e->is == op::logic_or)) {
             complain(doc_.root.find(key)->value.at, std::string("'") + key + "' is one comparison: the value left, its limit right");
         }
     }

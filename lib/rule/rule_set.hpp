@@ -22,6 +22,7 @@ struct rule {
     std::string names;         // a shop rule: the published rule it stands beside
     std::string settles;       // the measurement or datum that settles a marginal or a not-shown; empty: told from what is missing
     bool gather = false;
+    verdict at_worst = verdict::fail; // a breach is told as no more than this: what would make it a failure is judged by another rule
 };
 
 struct compiled_class {

@@ -160,6 +160,9 @@ value solved_supply::stored_fact(const subject& s, const std::string& name) cons
     if (name == "is-pair") {
         return truth_of(i->is_pair);
     }
+    if (name == "touchable") {
+        return truth_of(i->touchable);
+    }
     if (name == "discharge-path") {
         return truth_of(i->discharge_path);
     }
@@ -204,6 +207,9 @@ value solved_supply::access_fact(const subject& s, state in, const std::string& 
     }
     if (name == "touchable") {
         return truth_of(a->touchable);
+    }
+    if (name == "person") {
+        return supply_fact("person");
     }
     if (name == "discharge-path") {
         return truth_of(a->discharge_path);

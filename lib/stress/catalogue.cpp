@@ -76,6 +76,8 @@ void add_energy(std::vector<fact_spec>& list)
     list.push_back(solved("access", "touch-current", dim::current, "steady, through the standard's body of 2 kohm"));
     list.push_back(solved("access", "charge", dim::charge, "all that can flow from the pair after switch-off"));
     list.push_back(choice("access", "when", "when it can be reached", {"always", "cover off", "plug withdrawn"}));
+    list.push_back(choice("access", "person", "ordinary if unsaid", {"ordinary", "instructed", "skilled"}));
+    list.push_back(truth("stored", "touchable", "a pair that is open always or by plug withdrawn"));
     list.push_back(truth("access", "touchable", "open always, by plug withdrawn, or the chassis"));
     list.push_back(truth("access", "discharge-path", "a soldered resistive path joins the two nets"));
     list.push_back(solved("access", "after-1-s", dim::voltage, "left one second after switch-off, input open or shorted, whichever is worse"));

@@ -26,6 +26,7 @@ public:
         hold_input();
         hold_output();
         hold_stage();
+        hold_gate();
         for (element& e : wire(s_, lib, in_, rail_.stage_parts)) {
             add(std::move(e));
         }
@@ -88,7 +89,7 @@ private:
         }
     }
 
-    /// The switch node swings from the switch's return to the peak; the gate from there to the highest input.
+    /// The switch node swings from the switch's return to the peak.
     void hold_stage()
     {
         if (in_ == state::standby || rail_.switch_net.empty()) {
@@ -99,7 +100,12 @@ private:
             s.in_use.low = s.whole.low = 0.0;
         }
         hold(rail_.switch_net, rail_.switch_return, swing, "switch node");
-        if (!rail_.gate_net.empty() && s_.fed.voltage && s_.fed.voltage->number() != nullptr) {
+    }
+
+    /// The driver is fed from the input: the gate stands anywhere from the switch's return to the highest input.
+    void hold_gate()
+    {
+        if (!rail_.switch_return.empty() && !rail_.gate_net.empty() && s_.fed.voltage && s_.fed.voltage->number() != nullptr) {
             value gate = number(*s_.fed.voltage->number());
             for (spread& s : gate.numbers) {
                 s.in_use.low = s.whole.low = 0.0;

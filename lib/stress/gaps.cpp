@@ -25,6 +25,14 @@ std::string gap_name(const gap& g, const std::string& insulation, bool floor)
     return nets + where + (floor && insulation != "functional" ? ", " + insulation : "");
 }
 
+/// The higher voltage speaks for a floor gap; at the same voltage the one that rests on fewer assumptions.
+bool graver(const gap_item& a, const gap_item& b)
+{
+    const double x = highest(a.voltage).value_or(unbounded);
+    const double y = highest(b.voltage).value_or(unbounded);
+    return x > y * (1.0 + 1e-12) || (x >= y * (1.0 - 1e-12) && a.voltage.assumed.size() < b.voltage.assumed.size());
+}
+
 /// Voltage on something that can be touched, above the low-voltage limit, that was not there before.
 bool puts_voltage_on_touchable(const dc_solution& before, const dc_solution& after, const std::set<std::string>& touchable, const std::string& ground)
 {
@@ -63,7 +71,7 @@ void solved_supply::list_gaps()
             const auto same = std::find_if(found.begin(), found.end(), [&](const gap_item& i) { return i.insulation == item.insulation; });
             if (same == found.end()) {
                 found.push_back(std::move(item));
-            } else if (highest(item.voltage).value_or(unbounded) > highest(same->voltage).value_or(unbounded)) {
+            } else if (graver(item, *same)) {
                 *same = std::move(item);
             }
         }

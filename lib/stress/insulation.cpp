@@ -60,6 +60,7 @@ std::map<std::string, int> circuits_of(const supply& s, const library& lib)
         for (const element& e : elements_of(p, lib, state::running)) {
             if (may_conduct(e)) {
                 joined.join(e.from, e.to);
+                joined.join(e.from, e.wiper);
             }
         }
         // Switch, rectifier and winding nets are one circuit even where the d.c. network leaves them out.

@@ -31,6 +31,9 @@ value working_voltage(const std::vector<dc_solution>& states, const std::string&
     for (std::size_t i = 1; i < states.size(); ++i) {
         v = hull(v, magnitude(states[i].voltage(a, b)));
     }
+    for (spread& x : v.numbers) {
+        x = {x.dim, {x.in_use.high, x.in_use.high}, {x.in_use.high, x.whole.high}, std::nullopt};
+    }
     v.shown.formula = "greatest |" + a + " - " + b + "| over running, no-load and standby";
     return v;
 }

@@ -17,6 +17,7 @@ inline constexpr double low_voltage = 60.0;
 struct stored_item {
     subject about;
     bool is_pair = false;
+    bool touchable = false;         // a pair open always or by plug withdrawn
     std::vector<std::string> parts; // capacitors that can reach it
     value capacitance, voltage, energy, charge, at_once_energy, at_once_charge;
     bool discharge_path = false;

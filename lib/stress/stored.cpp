@@ -56,7 +56,9 @@ std::vector<const charged_capacitor*> reaching(const std::vector<charged_capacit
     near.merge(reach(running, b, may_conduct));
     std::vector<const charged_capacitor*> found;
     for (const charged_capacitor& c : all) {
-        if (near.contains(c.positive) && near.contains(c.negative)) {
+        // One that never exceeds 60 V is no hazard behind a rectifier: its charge comes at its own voltage.
+        const bool counts = !highest(c.voltage) || highest(magnitude(c.voltage)).value_or(unbounded) > low_voltage;
+        if (counts && near.contains(c.positive) && near.contains(c.negative)) {
             found.push_back(&c);
         }
     }
@@ -127,6 +129,7 @@ void solved_supply::list_stored()
         stored_item item;
         item.about = {"stored", a.about.name, a.where.nets, a.about.at};
         item.is_pair = true;
+        item.touchable = a.touchable;
         item.voltage = hull(a.voltage[state::running], a.voltage[state::no_load]);
         item.energy = number(exactly({0.0, dim::energy}));
         item.charge = number(exactly({0.0, dim::charge}));
