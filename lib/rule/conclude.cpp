@@ -76,10 +76,10 @@ public:
         std::vector<std::string> out;
         for (const auto& [settles, about] : lines_) {
             std::string line = settles + " (" + about.front();
-            for (std::size_t i = 1; i < about.size(); ++i) {
+            for (std::size_t i = 1; i < about.size() && i < 3; ++i) {
                 line += "; " + about[i];
             }
-            out.push_back(line + ")");
+            out.push_back(line + (about.size() > 3 ? "; and " + std::to_string(about.size() - 3) + " more)" : ")"));
         }
         return out;
     }

@@ -228,10 +228,12 @@ value to_value(const circuit::extreme& in_use, const circuit::extreme& whole, co
     if (!whole.known) {
         return v;
     }
+    // Rounding of the solver is no voltage: what lies a trillion times below a volt, an ampere or a watt is nothing.
+    const auto tidy = [](double x) { return std::abs(x) < 1e-12 ? 0.0 : x; };
     const double low = std::min(in_use.known ? in_use.low : whole.low, whole.low);
     const double high = std::max(in_use.known ? in_use.high : whole.high, whole.high);
-    const range use = in_use.known ? range{in_use.low, in_use.high} : range{low, high};
-    v.numbers.push_back({d, use, {low, high}, std::nullopt});
+    const range use = in_use.known ? range{tidy(in_use.low), tidy(in_use.high)} : range{tidy(low), tidy(high)};
+    v.numbers.push_back({d, use, {tidy(low), tidy(high)}, std::nullopt});
     if (use.low == use.high) {
         v.numbers.back().nominal = use.low;
     }

@@ -290,6 +290,8 @@ decay_network& decay_network::operator=(decay_network&&) noexcept = default;
 
 namespace {
 
+constexpr double least_told = 1e-3; // volt: what is left is told no finer
+
 value from_figure(const circuit::rc_figure& f, const dimension& d, const std::string& formula)
 {
     value v;
@@ -349,7 +351,11 @@ value decay_network::left_after(const std::string& a, const std::string& b, doub
     if (f.floating) {
         return missing_value(value::type::number, {floating_words(a, b)});
     }
-    value v = from_figure(f, dim::voltage, fmt::format("greatest |V({}) - V({})| after {} s", a, b, seconds));
+    circuit::rc_figure told = f;
+    if (told.value > 0.0 && told.value < least_told) {
+        told.value = least_told;
+    }
+    value v = from_figure(told, dim::voltage, fmt::format("greatest |V({}) - V({})| after {} s", a, b, seconds));
     // The rectifier may refill from the input side up to the input's own voltage.
     for (spread& s : v.numbers) {
         const bool rail = inside_->root(a) == inside_->rectifier_to || inside_->root(b) == inside_->rectifier_to;

@@ -1,0 +1,114 @@
+#include "report/words.hpp"
+
+#include "quantity/text.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <fmt/format.h>
+
+namespace onehand {
+
+namespace {
+
+std::string joined(const std::vector<std::string>& words)
+{
+    std::string text;
+    for (const std::string& w : words) {
+        text += (text.empty() ? "" : ", ") + w;
+    }
+    return text;
+}
+
+} // namespace
+
+std::string figure(const value& v, int digits)
+{
+    if (v.never) {
+        return "never";
+    }
+    if (v.holds == value::type::truth) {
+        return v.truth ? (*v.truth ? "yes" : "no") : "unknown";
+    }
+    if (v.holds == value::type::choice) {
+        return v.choice.empty() ? "unknown" : v.choice;
+    }
+    std::string text;
+    if (v.numbers.empty()) {
+        text = "unknown";
+    } else if (v.numbers.size() == 1) {
+        text = format_spread(v.numbers.front(), digits);
+    } else {
+        spread all = v.numbers.front();
+        for (const spread& s : v.numbers) {
+            all = hull(all, s);
+        }
+        all.nominal.reset();
+        text = "one of " + format_spread(all, digits);
+    }
+    return v.missing.empty() ? text : text + " (needs " + joined(v.missing) + ")";
+}
+
+std::string greatest(const value& v, int digits)
+{
+    if (v.never) {
+        return "never";
+    }
+    if (v.numbers.empty()) {
+        return "unknown";
+    }
+    double top = v.numbers.front().whole.high;
+    for (const spread& s : v.numbers) {
+        top = std::max(top, s.whole.high);
+    }
+    return std::isfinite(top) ? format_quantity({top, v.numbers.front().dim}, digits) : "unknown";
+}
+
+std::string at_place(const place& p)
+{
+    return p.line == 0 ? p.file : fmt::format("{}:{}:{}", p.file, p.line, p.column);
+}
+
+std::size_t columns_of(const std::string& text)
+{
+    return static_cast<std::size_t>(std::count_if(text.begin(), text.end(), [](unsigned char c) { return (c & 0xC0U) != 0x80U; }));
+}
+
+std::vector<std::string> wrapped(const std::string& text, std::size_t width, std::size_t indent)
+{
+    std::vector<std::string> lines;
+    std::string line;
+    std::size_t at = 0;
+    while (at < text.size()) {
+        const std::size_t end = std::min(text.find(' ', at), text.size());
+        const std::string word = text.substr(at, end - at);
+        const bool fresh = line.find_first_not_of(' ') == std::string::npos;
+        if (!fresh && columns_of(line) + 1 + columns_of(word) > width) {
+            lines.push_back(std::move(line));
+            line = std::string(indent, ' ');
+            line += word;
+        } else {
+            line += (fresh ? "" : " ") + word;
+        }
+        at = end + 1;
+    }
+    if (!line.empty()) {
+        lines.push_back(std::move(line));
+    }
+    return lines;
+}
+
+std::string padded(const std::string& text, std::size_t width)
+{
+    const std::size_t columns = columns_of(text);
+    return columns >= width ? text : text + std::string(width - columns, ' ');
+}
+
+std::string source_words(const library* lib, const citation& c)
+{
+    const source* s = lib == nullptr ? nullptr : lib->find_source(c.cite);
+    const std::string title = s == nullptr ? c.cite : s->title.substr(0, s->title.find(','));
+    const std::string basis = c.rests_on == basis::confirmed ? "confirmed" : c.rests_on == basis::memory ? "from memory, not seen" : "common practice, no source";
+    return title + ", " + c.clause + " [" + basis + "]";
+}
+
+} // namespace onehand
