@@ -101,6 +101,18 @@ value longest_wait(const solved_supply& s, const access_item& a)
     return worst;
 }
 
+/// Within the ES1 line of the capacitor table, and exempt by charge in every set.
+bool too_little_to_wait_for(const solved_supply& s, const access_item& a)
+{
+    const auto charge = highest(a.charge);
+    const auto item = std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
+    if (!charge || *charge > 45e-6 || item == s.stored().end() || item->es1_voltage.numbers.empty() || !item->es1_voltage.known()) {
+        return false;
+    }
+    const auto volts = highest(item->voltage);
+    return volts && *volts <= item->es1_voltage.numbers.front().whole.low;
+}
+
 } // namespace
 
 std::vector<discharge_facts> discharge_section(const solved_supply& s, const std::vector<std::string>& sets)
@@ -128,9 +140,8 @@ std::optional<label_facts> label_section(const solved_supply& s)
     f.voltage = s.look_up(whole, state::running, "highest-voltage");
     f.energy = s.look_up(whole, state::running, "highest-energy");
     for (const access_item& a : s.accesses()) {
-        const auto charge = highest(a.charge);
-        if (charge && *charge <= 45e-6) {
-            continue; // too little charge to wait for, by every set's exemption
+        if (too_little_to_wait_for(s, a)) {
+            continue;
         }
         const value t = longest_wait(s, a);
         if (t.never || !t.known()) {
@@ -142,7 +153,7 @@ std::optional<label_facts> label_section(const solved_supply& s)
     }
     if (f.wait.numbers.empty()) {
         f.wait = number(exactly({0.0, dim::time}));
-        f.reason = "no pair holds more than 45 µC";
+        f.reason = "every pair is within ES1 by what flows at once, and holds 45 \u00b5C or less";
     } else {
         f.reason = "longest time to 60 V, any one discharge path open";
     }

@@ -38,6 +38,28 @@ double between(const box& b, double share)
     return b.low > 0.0 ? b.low * std::pow(b.high / b.low, share) : b.low + share * (b.high - b.low);
 }
 
+/// Closes in on an inner best between the neighbouring points of the coarse look.
+void refine(rc_point& p, double& slot, const box& b, double& best, const figure& f)
+{
+    if (std::isinf(b.high) || !(b.low > 0.0)) {
+        return;
+    }
+    double step = std::pow(b.high / b.low, 0.05);
+    for (int i = 0; i < 7; ++i) {
+        const double here = slot;
+        double kept = here;
+        for (const double there : {here / step, here * step}) {
+            slot = std::clamp(there, b.low, b.high);
+            if (const double now = f(p); now > best) {
+                best = now;
+                kept = slot;
+            }
+        }
+        slot = kept;
+        step = std::sqrt(step);
+    }
+}
+
 /// One value after the other to its best place: both ends and inner points, until nothing grows.
 double climb(const rc_network& n, rc_point p, const figure& f)
 {
@@ -57,6 +79,7 @@ double climb(const rc_network& n, rc_point p, const figure& f)
                 }
             }
             slot = kept;
+            refine(p, slot, b, best, f);
         };
         for (std::size_t i = 0; i < p.ohms.size(); ++i) {
             try_box(p.ohms[i], n.resistances[i].ohms);

@@ -9,7 +9,7 @@ namespace {
 
 using of = component_plan::figure::of;
 
-constexpr double grid_margin = 0.01; // a track's dissipation between the 65 points of its grid
+constexpr double grid_margin = 0.01; // a track's dissipation between the places looked at
 
 std::size_t at(int i)
 {

@@ -162,6 +162,7 @@ private:
             for (std::size_t f = 0; f < p_.figures.size(); ++f) {
                 if (!c.samples[0].form[f].empty()) {
                     widen(out_.by_globals[f][globals], told[f].low, told[f].high);
+                    note_best(f, told[f]);
                 }
             }
             note_power(c, chosen, told, keep);
@@ -240,19 +241,32 @@ private:
         }
     }
 
-    /// The whole track's dissipation peaks inside its travel: searched on a grid, a stated margin added by the caller.
+    /// Places along the travel, closer towards both ends: a section's power peaks where its resistance matches what feeds it, which may be a small share of the track. Neighbours
+    /// differ by a quarter, so the peak of p/(p + a)^2 lies at most 0.4 % above the best of them.
+    std::vector<double> places() const
+    {
+        std::vector<double> list{from_, to_};
+        for (double p = 1e-6; p < 0.5; p *= 1.25) {
+            for (const double place : {p, 1.0 - p}) {
+                if (place > from_ && place < to_) {
+                    list.push_back(place);
+                }
+            }
+        }
+        return list;
+    }
+
+    /// The whole track's dissipation peaks inside its travel: searched, a stated margin added by the caller.
     void note_track_power(const corner& c, const choice& chosen, const std::vector<double>& columns)
     {
         using of = component_plan::figure::of;
-        constexpr int steps = 64;
         for (std::size_t f = 0; f < p_.figures.size(); ++f) {
             if (p_.figures[f].what != of::section_1 || c.samples[0].form[f].empty()) {
                 continue;
             }
             const auto track_at = at(p_.figures[f].a);
             const double ohms = p_.track_ohms[track_at][at(chosen[p_.states.size() + track_at])];
-            for (int k = 0; k <= steps; ++k) {
-                const double place = from_ + (to_ - from_) * k / steps;
+            for (const double place : places()) {
                 std::vector<const std::vector<double>*> one;
                 std::vector<const std::vector<double>*> two;
                 for (const corner_sample& s : c.samples) {
@@ -315,50 +329,59 @@ private:
         }
     }
 
-    /// Too many corners: from several starts, one choice at a time for every figure and direction.
+    /// Too many corners: for every figure and direction, from the best corner seen so far, one choice at a time until nothing grows. The figures are monotone in each choice, so this
+    /// climbs to a corner that no single change betters; that it is the best of all is not proved.
     void search()
     {
         const std::vector<int> base = radices(p_);
-        std::set<choice> seen;
+        best_.assign(p_.figures.size() * 2, {});
         const auto look = [&](const choice& c) {
-            if (seen.insert(c).second) {
+            if (seen_.insert(c).second) {
+                current_ = &c;
                 visit(c, nullptr);
+                current_ = nullptr;
             }
         };
-        const auto measure = [&]() {
-            double sum = 0.0;
-            for (const auto& f : out_.by_globals) {
-                for (const figure_extreme& e : f) {
-                    sum += e.known ? e.high - e.low : 0.0;
-                }
-            }
-            return sum;
-        };
-        for (unsigned start = 0; start < 8; ++start) {
+        for (unsigned start = 0; start < 4; ++start) {
             choice c;
             for (std::size_t d = 0; d < base.size(); ++d) {
-                c.push_back(static_cast<int>(((d * 2654435761U + start * 40503U) >> 7U) % static_cast<unsigned>(base[d])));
+                const bool high = start == 1 || (start > 1 && (d + start) % 2 == 0);
+                c.push_back(high ? base[d] - 1 : 0);
             }
             look(c);
-            for (bool grew = true; grew;) {
+        }
+        for (std::size_t target = 0; target < best_.size(); ++target) {
+            for (bool grew = true; grew && !best_[target].at.empty();) {
                 grew = false;
                 for (std::size_t d = 0; d < base.size(); ++d) {
-                    const int old = c[d];
                     for (int s = 0; s < base[d]; ++s) {
-                        const double before = measure();
-                        choice next = c;
+                        const double before = best_[target].value;
+                        choice next = best_[target].at;
                         next[d] = s;
                         look(next);
-                        if (measure() > before) {
-                            c = next;
-                            grew = true;
-                        }
+                        grew = grew || best_[target].value > before * (before > 0.0 ? 1.0 + 1e-12 : 1.0 - 1e-12);
                     }
-                    static_cast<void>(old);
                 }
             }
         }
     }
+
+    void note_best(std::size_t figure, const travel_extreme& e)
+    {
+        if (current_ == nullptr) {
+            return;
+        }
+        for (const auto& [target, value] : {std::pair(2 * figure, e.high), std::pair(2 * figure + 1, -e.low)}) {
+            if (best_[target].at.empty() || value > best_[target].value) {
+                best_[target] = {*current_, value};
+            }
+        }
+    }
+
+    struct best_corner {
+        choice at;
+        double value = 0.0;
+    };
 
     const component_plan& p_;
     sweep_result out_;
@@ -366,6 +389,9 @@ private:
     double to_ = 0.0;
     std::vector<at_corner> voltages_;
     std::vector<figure_extreme> signs_;
+    std::set<choice> seen_;             // search only
+    std::vector<best_corner> best_;     // search only: per figure, high and low
+    const choice* current_ = nullptr;   // search only
 };
 
 } // namespace

@@ -50,7 +50,11 @@ public:
     }
 
 private:
-    void line(const std::string& text = {}) { out_ += text + '\n'; }
+    void line(const std::string& words = {})
+    {
+        const std::size_t end = words.find_last_not_of(' ');
+        out_ += words.substr(0, end == std::string::npos ? 0 : end + 1) + '\n';
+    }
 
     void text(const std::string& words, std::size_t indent = 0)
     {
@@ -168,11 +172,15 @@ private:
         }
         title(fmt::format("Findings: {} fail, {} not-shown, {} marginal, {} pass, {} not-applicable", counts[verdict::fail], counts[verdict::not_shown],
                           counts[verdict::marginal], counts[verdict::pass], counts[verdict::not_applicable]));
+        const finding* last = nullptr;
         for (const finding& f : r_.judged.findings) {
             const bool told = f.judged <= verdict::marginal || (o_.show_working && f.judged == verdict::pass);
-            if (told) {
-                one(f);
+            if (!told) {
+                continue;
             }
+            const bool again = last != nullptr && last->rule == f.rule && last->judged == f.judged && last->settles == f.settles;
+            again && !o_.show_working ? once_more(f) : one(f);
+            last = &f;
         }
         advice();
     }
@@ -182,13 +190,8 @@ private:
         line();
         text(strong(word_for(f.judged), f.judged == verdict::fail ? "1;31" : "1") + ", " + word_for(f.signal) + ": " + f.title, 2);
         item("  ", f.message);
-        for (const subject& s : f.gathered) {
-            item("    ", s.name);
-        }
-        if (f.left && f.limit && f.left->holds == value::type::number) {
-            const std::string margin = f.margin ? fmt::format(", margin {:+.0f} %", *f.margin * 100.0) : "";
-            item("  value  ", figure(*f.left) + " " + f.comparison + " " + figure(*f.limit) + margin);
-        }
+        gathered(f);
+        value_line(f);
         if (f.judged != verdict::pass) {
             item("  why    ", f.why);
             item("  change ", f.judged == verdict::fail ? f.remedy : f.settles.empty() ? f.remedy : f.settles);
@@ -204,6 +207,39 @@ private:
             for (const evidence& e : f.shown) {
                 working(e);
             }
+        }
+    }
+
+    /// The same rule on another subject: only what differs.
+    void once_more(const finding& f)
+    {
+        item("  ", f.message);
+        value_line(f);
+        if (f.about.at.line != 0) {
+            item("  at     ", at_place(f.about.at));
+        }
+    }
+
+    void value_line(const finding& f)
+    {
+        if (f.left && f.limit && f.left->holds == value::type::number) {
+            const std::string margin = f.margin ? fmt::format(", margin {:+.0f} %", *f.margin * 100.0) : "";
+            item("  value  ", figure(*f.left) + " " + f.comparison + " " + figure(*f.limit) + margin);
+        }
+    }
+
+    void gathered(const finding& f)
+    {
+        constexpr std::size_t most = 12;
+        std::string names;
+        for (std::size_t i = 0; i < f.gathered.size() && (i < most || o_.show_working); ++i) {
+            names += (i == 0 ? "" : ", ") + f.gathered[i].name;
+        }
+        if (f.gathered.size() > most && !o_.show_working) {
+            names += fmt::format(" and {} more", f.gathered.size() - most);
+        }
+        if (f.gathered.size() > 1) {
+            item("  all of ", names);
         }
     }
 
@@ -305,7 +341,7 @@ private:
             return;
         }
         title("Spacings above 60 V, highest first");
-        line("  " + padded("pair", 18) + padded("voltage", 10) + padded("creepage asked", 16) + padded("measured", 11) + padded("clearance asked", 16) + "measured");
+        line("  " + padded("pair", 16) + padded("voltage", 10) + padded("creepage asked", 15) + padded("measured", 13) + padded("clearance asked", 16) + "measured");
         std::size_t shown = 0;
         for (const spacing_facts& s : r_.spacings) {
             if (!o_.show_working && shown >= 12 && s.covered != "none") {
@@ -317,8 +353,8 @@ private:
             ++shown;
             const std::string mark = s.covered == "floor" ? " floor" : "";
             const bool there = !s.measured.empty();
-            line("  " + padded(s.about.name, 18) + padded(greatest(s.working_voltage), 10) + padded(greatest(s.asked.front().creepage, 3), 16) +
-                 padded(there ? greatest(s.measured.front().creepage, 3) + mark : "none", 11) + padded(greatest(s.asked.front().clearance, 3), 16) +
+            line("  " + padded(s.about.name, 16) + padded(greatest(s.working_voltage), 10) + padded(greatest(s.asked.front().creepage, 3), 15) +
+                 padded(there ? greatest(s.measured.front().creepage, 3) + mark : "none", 13) + padded(greatest(s.asked.front().clearance, 3), 16) +
                  (there ? greatest(s.measured.front().clearance, 3) + mark : "none"));
         }
         if (shown < r_.spacings.size()) {

@@ -76,8 +76,8 @@ std::size_t columns_of(const std::string& text)
 std::vector<std::string> wrapped(const std::string& text, std::size_t width, std::size_t indent)
 {
     std::vector<std::string> lines;
-    std::string line;
-    std::size_t at = 0;
+    std::size_t at = std::min(text.find_first_not_of(' '), text.size());
+    std::string line(at, ' ');
     while (at < text.size()) {
         const std::size_t end = std::min(text.find(' ', at), text.size());
         const std::string word = text.substr(at, end - at);
@@ -87,11 +87,11 @@ std::vector<std::string> wrapped(const std::string& text, std::size_t width, std
             line = std::string(indent, ' ');
             line += word;
         } else {
-            line += (fresh ? "" : " ") + word;
+            line += (fresh ? "" : " ") + word; // the blanks a text begins with are its own indent
         }
         at = end + 1;
     }
-    if (!line.empty()) {
+    if (line.find_first_not_of(' ') != std::string::npos) {
         lines.push_back(std::move(line));
     }
     return lines;

@@ -157,7 +157,9 @@ void solved_supply::list_pairs()
             }
             const gap* g = gap_for(written_, nets[i], nets[j]);
             pair_item item;
-            item.about = {"net-pair", pair_name(nets[i], nets[j]), {nets[i], nets[j]}, written_.net_at.contains(nets[i]) ? written_.net_at.at(nets[i]) : place{}};
+            const bool turned = nets[i] == written_.return_net; // the return is told last
+            const std::vector<std::string> ends{nets[turned ? j : i], nets[turned ? i : j]};
+            item.about = {"net-pair", pair_name(ends[0], ends[1]), ends, written_.net_at.contains(nets[i]) ? written_.net_at.at(nets[i]) : place{}};
             item.voltage = std::move(v);
             item.covered = g == nullptr ? "none" : g->nets[1] == "*" ? "floor" : "gap";
             item.person_side = touchable.contains(nets[i]) != touchable.contains(nets[j]);

@@ -58,7 +58,8 @@ value input_fused(const supply& s, const library& lib)
             return truth_of(false);
         }
     }
-    return truth_of(true);
+    const bool stage_open = s.stage && !s.stage->inputs.empty() && open.contains(s.stage->inputs[0]);
+    return truth_of(!stage_open);
 }
 
 value highest(const std::vector<const value*>& all, dimension d)

@@ -27,7 +27,7 @@ public:
                                {"internal-capacitance", type::quantity, dim::capacitance, {}},
                                {"internal-bleeder", type::quantity, dim::resistance, {}},
                                {"spike", type::quantity, dim::voltage, {}}},
-                              {"inductor", "switch", "rectifier", "outputs", "drive", "feedback", "ladder"}, "[converter." + c_.name + "]");
+                              {"input", "inductor", "switch", "rectifier", "outputs", "drive", "feedback", "ladder"}, "[converter." + c_.name + "]");
         if (const auto topology = c_.fields.find("topology"); topology != c_.fields.end()) {
             c_.topology = *topology->second.text();
             c_.fields.erase("topology");
@@ -37,6 +37,9 @@ public:
         c_.inductor = reference("inductor", {"inductor", "transformer"});
         c_.power_switch = reference("switch", {"mosfet", "bjt"});
         c_.rectifier = reference("rectifier", {"diode"});
+        if (const entry* e = entry_.value.find("input")) {
+            c_.inputs = r_.nets(e->value, 2);
+        }
         read_outputs();
         read_ladder();
         read_drive();

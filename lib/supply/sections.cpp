@@ -95,6 +95,7 @@ void read_supply_table(reader& r)
     }
     if (const entry* e = t->find("chassis")) {
         r.built.chassis = r.net(e->value);
+        ++r.uses[r.built.chassis]; // a chassis stands alone
     }
     if (const entry* e = t->find("complete")) {
         r.built.complete = read_texts(r, e->value, {"capacitors", "sources", "access"}, "complete");

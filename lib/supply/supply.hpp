@@ -92,6 +92,7 @@ struct converter {
     std::string name;       // K1
     std::string topology;   // boost | flyback | boost-multiplier | module
     std::string inductor, power_switch, rectifier;
+    std::vector<std::string> inputs;  // what feeds it, positive net first; may be unsaid
     std::vector<std::string> outputs; // positive net first
     std::vector<std::string> ladder;
     std::string gate;
