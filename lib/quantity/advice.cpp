@@ -80,9 +80,6 @@ std::string about_words(std::string_view text, const dimension& expected)
     if (has(text, "Ohm") || has(text, "OHM")) {
         return "the unit is written \"ohm\" or \"\u03a9\": prefixes stand before it, \"4.7 kohm\"";
     }
-    if (expected == dim::capacitance && number_then(text, "mF") && text.size() > 4) {
-        return "mF is the millifarad, a thousand \u00b5F: for microfarads write \"3300 uF\", else \"3.3 mF\" below a thousand";
-    }
     if (expected == dim::capacitance && (number_then(text, "M") || number_then(text, "K"))) {
         return std::string("'") + text.back() + "' on a capacitor is a tolerance letter (" + (text.back() == 'M' ? "20 %" : "10 %") +
                ") or a multiplier: write the value with its unit, and the tolerance as \"+-" + (text.back() == 'M' ? "20" : "10") + "%\"";

@@ -46,7 +46,7 @@ std::string format_quantity(const quantity& q, int digits = 4);
 /// "180 V (171 V .. 189 V)" style text of a spread's whole range; one value if it is a point; "up to 50 ns", "at least 3 V" where one end is unknown.
 std::string format_spread(const spread& s, int digits = 4);
 
-/// Text that parse_spread reads back to the same spread exactly (round-trip law).
+/// Text that parse_spread reads back to the same spread exactly (round-trip law): what is in use, and the whole in brackets where it is wider.
 std::string write_spread(const spread& s);
 
 } // namespace onehand

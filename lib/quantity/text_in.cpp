@@ -81,6 +81,10 @@ parsed<one_value> take_value(cursor& c, const dimension& expected, bool as_diffe
     if (!value) {
         return error_at(c, start, "the number is too large to be meant");
     }
+    if (word == "mF" && std::abs(*value) >= 1.0) {
+        return error_at(c, start, "mF is the millifarad: " + std::string(c.text.substr(start, c.at - start)) + " is " + format_quantity({*value, expected}) +
+                                      "; for microfarads write uF, for farads write F");
+    }
     return one_value{*value * unit->factor + unit->offset, unit->offset != 0.0};
 }
 
@@ -181,6 +185,29 @@ parsed<spread> take_one_sided(cursor& c, const dimension& expected, bool upper)
     return upper ? between(expected, -unbounded, si) : between(expected, si, unbounded);
 }
 
+/// "(a .. b)" after what is in use: the whole range, as output prints it. Nothing there: the spread as it is.
+parsed<spread> take_whole(cursor& c, spread s)
+{
+    c.blanks();
+    const std::size_t start = c.at;
+    if (!c.take("(")) {
+        return s;
+    }
+    const auto low = take_value(c, s.dim, false);
+    c.blanks();
+    const bool points = std::holds_alternative<one_value>(low) && c.take("..");
+    const auto high = points ? take_value(c, s.dim, false) : low;
+    c.blanks();
+    if (!points || !std::holds_alternative<one_value>(high) || !c.take(")")) {
+        return error_at(c, start, "in brackets stands the whole range: \"12 V (11.4 V .. 12.6 V)\"");
+    }
+    s.whole = {std::get<one_value>(low).si, std::get<one_value>(high).si};
+    if (!s.whole.contains(s.in_use)) {
+        return error_at(c, start, "the whole range in brackets does not hold what stands before it");
+    }
+    return s;
+}
+
 parsed<spread> take_adjustable(cursor& c, const dimension& expected, double low)
 {
     const std::size_t start = c.at;
@@ -199,8 +226,9 @@ parsed<spread> take_adjustable(cursor& c, const dimension& expected, double low)
     }
     if (const auto& t = std::get<std::optional<tolerance>>(tolerated)) {
         s.whole = {widened(low, *t).low, widened(high, *t).high};
+        return s;
     }
-    return s;
+    return take_whole(c, s);
 }
 
 parsed<spread> take_spread(cursor& c, const dimension& expected)
@@ -226,7 +254,7 @@ parsed<spread> take_spread(cursor& c, const dimension& expected)
     }
     const auto& t = std::get<std::optional<tolerance>>(tolerated);
     if (!t) {
-        return exactly({nominal.si, expected});
+        return take_whole(c, exactly({nominal.si, expected}));
     }
     if (t->relative && nominal.absolute_temperature) {
         return error_at(c, 0, "a tolerance on a temperature is written in K");

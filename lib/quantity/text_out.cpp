@@ -171,10 +171,8 @@ std::string write_spread(const spread& s)
     if (s.whole.high == unbounded) {
         return "min " + print(s.whole.low);
     }
-    if (is_point(s.whole)) {
-        return print(s.whole.low);
-    }
-    return print(s.whole.low) + " .. " + print(s.whole.high);
+    const auto range_text = [&](const range& r) { return is_point(r) ? print(r.low) : print(r.low) + " .. " + print(r.high); };
+    return s.in_use == s.whole ? range_text(s.whole) : range_text(s.in_use) + " (" + print(s.whole.low) + " .. " + print(s.whole.high) + ")";
 }
 
 } // namespace onehand
