@@ -129,6 +129,7 @@ void parse_into(std::string_view text, read_result& result)
         const std::string message = reworded(error.description(), line);
         complaint c = result.doc.complain(at, message);
         if (message.starts_with("written twice") && !line.empty()) {
+            at.column = static_cast<std::uint32_t>(line.find_first_not_of(" \t[") + 1);
             if (const auto also = first_place(result.doc, at)) {
                 c = result.doc.contradict(at, message, *also);
             }

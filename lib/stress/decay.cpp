@@ -1,6 +1,7 @@
 #include "stress/decay.hpp"
 
 #include "circuit/discharge.hpp"
+#include "physics/storage.hpp"
 #include "stress/dc_network.hpp"
 #include "stress/paths.hpp"
 #include "stress/spread_math.hpp"
@@ -103,17 +104,31 @@ value held_voltage(const std::vector<dc_solution>& states, const std::string& a,
     return v;
 }
 
+/// A typed formula of capacitance and voltage, rising in both, over both ranges of each.
+template<class Result>
+value of_both(const value& farads, const value& volts, Result (*formula)(farad, volt))
+{
+    value out;
+    inherit(out, volts);
+    inherit(out, farads);
+    const auto at = [&](double c, double u) { return from(formula(farad::from_value(c), volt::from_value(u))).si; };
+    for (const spread& c : farads.numbers) {
+        for (const spread& u : volts.numbers) {
+            spread s{dimension_of<Result>, {at(c.in_use.low, u.in_use.low), at(c.in_use.high, u.in_use.high)}, {at(c.whole.low, u.whole.low), at(c.whole.high, u.whole.high)}, {}};
+            if (c.nominal && u.nominal) {
+                s.nominal = at(*c.nominal, *u.nominal);
+            }
+            out.numbers.push_back(s);
+        }
+    }
+    return out;
+}
+
 void fill(charged_capacitor& c, const std::vector<element>& off)
 {
     const value volts = magnitude(c.voltage);
-    c.energy = square_product(volts, c.capacitance, 0.5);
-    for (spread& s : c.energy.numbers) {
-        s.dim = dim::energy;
-    }
-    c.charge = product(volts, c.capacitance);
-    for (spread& s : c.charge.numbers) {
-        s.dim = dim::charge;
-    }
+    c.energy = of_both(c.capacitance, volts, physics::stored_energy);
+    c.charge = of_both(c.capacitance, volts, physics::stored_charge);
     c.energy.shown.formula = "C U^2 / 2";
     c.charge.shown.formula = "C U";
     for (value* v : {&c.energy, &c.charge}) {

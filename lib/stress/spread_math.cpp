@@ -70,13 +70,6 @@ value product(const value& a, const value& b, double factor)
         [factor](double x, double y) { return factor * x * y; });
 }
 
-value square_product(const value& a, const value& b, double factor)
-{
-    return combine(
-        a, b, [factor](const range& x, const range& y) { return range{factor * x.low * x.low * y.low, factor * x.high * x.high * y.high}; },
-        dimension_of(a) * dimension_of(a) * dimension_of(b), [factor](double x, double y) { return factor * x * x * y; });
-}
-
 value sum(const value& a, const value& b)
 {
     return combine(

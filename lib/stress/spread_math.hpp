@@ -12,8 +12,6 @@ value magnitude(const value& v);
 
 /// Product of two independent non-negative figures, times `factor`.
 value product(const value& a, const value& b, double factor = 1.0);
-/// a^2 b factor, both non-negative.
-value square_product(const value& a, const value& b, double factor);
 value sum(const value& a, const value& b);
 /// The smallest value that holds both.
 value hull(const value& a, const value& b);

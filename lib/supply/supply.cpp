@@ -55,6 +55,8 @@ supply_result read_supply(const document& doc, const library& lib, const std::ve
     check_whole(r);
     complaints.insert(complaints.end(), std::make_move_iterator(r.complaints.begin()), std::make_move_iterator(r.complaints.end()));
     sort_by_place(complaints);
+    const auto same = [](const complaint& a, const complaint& b) { return a.at == b.at && a.message == b.message; };
+    complaints.erase(std::unique(complaints.begin(), complaints.end(), same), complaints.end());
     return {std::move(r.built), std::move(complaints)};
 }
 

@@ -34,6 +34,10 @@ void check_single_nets(reader& r)
             continue;
         }
         const place at = r.built.net_at[net];
+        if (net == r.built.return_net) {
+            r.complain(at, "nothing joins the return net '" + net + "'");
+            continue;
+        }
         std::string near;
         for (const auto& [other, times] : r.uses) {
             const bool alike = one_letter_apart(net, other) && !digits_differ(net, other) && net.size() > 2;
