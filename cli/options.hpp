@@ -6,7 +6,7 @@
 struct options {
     std::string command;
     std::vector<std::string> files;
-    std::string word;                    // cite WORD, kinds NAME
+    std::string word; // cite WORD, kinds NAME
     std::string format = "text";
     std::string output;
     std::vector<std::string> limit_sets;

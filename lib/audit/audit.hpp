@@ -1,6 +1,7 @@
 #pragma once
-// The one public entry: text in, result or complaints out. Runs the sweep: read, solve, judge, conclude. No file system, no printing, no globals, no exceptions
-// out; two threads may call it at once. The result holds everything the reports show; it is an aid to a competent person and no certificate.
+// The one public entry: text in, result or complaints out. Runs the sweep: read, solve, judge, conclude. No file system, no printing, no globals, no
+// exceptions out; two threads may call it at once. The result holds everything the reports show; it is an aid to a competent person and no
+// certificate.
 #include "rule/rules.hpp"
 #include "supply/change.hpp"
 
@@ -46,7 +47,7 @@ struct set_point_facts {
     value output;
     std::string basis; // "held by FB" | "as declared"
     struct end {
-        std::string part; // "R7", "threshold", "P1 position"
+        std::string part;            // "R7", "threshold", "P1 position"
         std::string at_low, at_high; // the end of its range that gives the low and the high set point: "low", "high", "inside"
     };
     std::vector<end> set_by;
@@ -65,7 +66,7 @@ struct access_facts {
 };
 
 struct stored_facts {
-    subject about;                  // one capacitor ("C4") or one accessible pair ("HT-0V")
+    subject about; // one capacitor ("C4") or one accessible pair ("HT-0V")
     bool is_pair = false;
     std::vector<std::string> parts; // the capacitors that can reach it
     value capacitance, voltage, energy, charge;
@@ -80,7 +81,7 @@ struct discharge_facts {
     std::string change;     // none, or the path broken
     struct limit {
         quantity to;
-        value time;         // never and reason where it never comes
+        value time; // never and reason where it never comes
         std::string limit_set;
         bool exempt = false; // by charge
     };
@@ -115,7 +116,7 @@ struct spacing_facts {
 
 struct label_facts {
     value voltage, energy;
-    value wait;          // the longest time that is asked; never or missing: measure
+    value wait; // the longest time that is asked; never or missing: measure
     std::string reason;
 };
 
@@ -137,7 +138,7 @@ struct audit_result {
     std::optional<label_facts> label;
     std::vector<std::string> assumptions; // listed, each in words
     std::vector<std::string> cautions;
-    std::vector<std::string> not_seen;    // what the tool did not look at
+    std::vector<std::string> not_seen; // what the tool did not look at
 };
 
 struct audit_outcome {

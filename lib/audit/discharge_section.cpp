@@ -105,7 +105,8 @@ value longest_wait(const solved_supply& s, const access_item& a)
 bool too_little_to_wait_for(const solved_supply& s, const access_item& a)
 {
     const auto charge = highest(a.charge);
-    const auto item = std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
+    const auto item =
+        std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
     if (!charge || *charge > 45e-6 || item == s.stored().end() || item->es1_voltage.numbers.empty() || !item->es1_voltage.known()) {
         return false;
     }
@@ -119,7 +120,8 @@ std::vector<discharge_facts> discharge_section(const solved_supply& s, const std
 {
     std::vector<discharge_facts> list;
     for (const access_item& a : s.accesses()) {
-        const auto stored = std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
+        const auto stored =
+            std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
         for (const off_case& how : s.off_cases()) {
             discharge_facts f = case_of(s, a, how, sets);
             f.only_path = stored != s.stored().end() ? stored->only_part : "";

@@ -41,7 +41,8 @@ std::vector<std::string> cautions_for(const audit_result& r)
 {
     std::vector<std::string> list{
         "One hand in a pocket, one lead at a time, and never alone: somebody near who can switch off and call for help.",
-        "Capacitors hold their charge after switch-off and can come back after a brief short: discharge through a resistor, prove dead, leave shorted.",
+        "Capacitors hold their charge after switch-off and can come back after a brief short: discharge through a resistor, prove dead, leave "
+        "shorted.",
         "Prove the meter on a known source, test, prove it again; meter, leads and probes rated for the highest voltage told here.",
         "This report knows only what the description says: no burr, flux, loose strand, wrong part or hidden second source is in it.",
         "Local codes and the judgement of a licensed or authorised person come before anything printed here."};
@@ -53,11 +54,11 @@ std::vector<std::string> cautions_for(const audit_result& r)
 
 const std::vector<std::string>& not_seen()
 {
-    static const std::vector<std::string> list{"the converter's own currents, ringing, saturation and start-up (the switch's spike is as written or assumed)",
-                                               "what follows a failed part, except where a gap is bridged or a discharge path is missing",
-                                               "what a running supply can push through a person beyond its series resistances (the rail is taken as stiff)",
-                                               "recovery of a capacitor by dielectric absorption after a short",
-                                               "anything on the mains side"};
+    static const std::vector<std::string> list{
+        "the converter's own currents, ringing, saturation and start-up (the switch's spike is as written or assumed)",
+        "what follows a failed part, except where a gap is bridged or a discharge path is missing",
+        "what a running supply can push through a person beyond its series resistances (the rail is taken as stiff)",
+        "recovery of a capacitor by dielectric absorption after a short", "anything on the mains side"};
     return list;
 }
 

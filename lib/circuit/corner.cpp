@@ -10,9 +10,9 @@ namespace onehand::circuit {
 
 namespace {
 
-constexpr double least_ohms = 1e-3;   // stands for a short where a resistance is unknown
-constexpr double most_ohms = 1e15;    // stands for an open
-constexpr double closed_ohms = 1e-6;  // a closed alternative
+constexpr double least_ohms = 1e-3;  // stands for a short where a resistance is unknown
+constexpr double most_ohms = 1e15;   // stands for an open
+constexpr double closed_ohms = 1e-6; // a closed alternative
 constexpr std::array<double, 3> places{0.25, 0.5, 0.75};
 
 std::size_t at(int i)
@@ -113,14 +113,17 @@ public:
                 c /= state(at(position)).ohms;
             }
             break;
-        case form::current: told[p_.red->sources.size() + at(position)] = 1.0; break;
+        case form::current:
+            told[p_.red->sources.size() + at(position)] = 1.0;
+            break;
         case form::clamp:
         case form::closed:
             for (int c = 0; c < p_.columns; ++c) {
                 told[at(c)] = x_(extra_of_[at(position)], c);
             }
             break;
-        default: break;
+        default:
+            break;
         }
         return told;
     }
@@ -192,7 +195,9 @@ private:
         const int to = cluster(b.to);
         const int column = static_cast<int>(p_.red->sources.size() + i);
         switch (state(i).is) {
-        case form::resistance: conductance(from, to, 1.0 / state(i).ohms); return extra;
+        case form::resistance:
+            conductance(from, to, 1.0 / state(i).ohms);
+            return extra;
         case form::current:
             inject(from, column, -1.0);
             inject(to, column, 1.0);
@@ -202,7 +207,8 @@ private:
             extra_of_[i] = extra;
             tie(from, to, extra, state(i).is == form::clamp ? column : -1);
             return extra + 1;
-        default: return extra;
+        default:
+            return extra;
         }
     }
 
@@ -300,8 +306,10 @@ std::vector<double> raw_form(const component_plan& p, const system& s, const com
     using of = component_plan::figure::of;
     const auto between = [&](int a, int b) { return s.floating(a) || s.floating(b) ? std::vector<double>{} : s.difference(a, b); };
     switch (f.what) {
-    case of::node: return s.floating(f.a) ? std::vector<double>{} : s.node(f.a);
-    case of::pair: return between(f.a, f.b);
+    case of::node:
+        return s.floating(f.a) ? std::vector<double>{} : s.node(f.a);
+    case of::pair:
+        return between(f.a, f.b);
     case of::across: {
         const branch& b = p.net->branches[at(p.part->branches[at(f.a)])];
         return between(s.cluster(b.from), s.cluster(b.to));
@@ -310,7 +318,8 @@ std::vector<double> raw_form(const component_plan& p, const system& s, const com
         const branch& b = p.net->branches[at(p.part->branches[at(f.a)])];
         return s.floating(s.cluster(b.from)) || s.floating(s.cluster(b.to)) ? std::vector<double>{} : s.through(f.a);
     }
-    default: break;
+    default:
+        break;
     }
     const track& t = p.net->tracks[at(p.part->tracks[at(f.a)])];
     const bool first = f.what == of::section_1;
@@ -450,8 +459,8 @@ corner solve_corner(const component_plan& p, const choice& chosen)
     return out;
 }
 
-travel_extreme over_travel(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms, const std::vector<double>& columns, double from,
-                           double to)
+travel_extreme over_travel(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms,
+                           const std::vector<double>& columns, double from, double to)
 {
     std::array<double, 3> value{};
     for (std::size_t i = 0; i < samples.size(); ++i) {

@@ -1,6 +1,6 @@
 #pragma once
-// One corner of a component: every discrete state and resistance end chosen. It gives each figure as a linear form in the sources, or, with a wiper in its travel, three
-// samples from which the exact rational function of the wiper's position is rebuilt. Inside the room only.
+// One corner of a component: every discrete state and resistance end chosen. It gives each figure as a linear form in the sources, or, with a wiper
+// in its travel, three samples from which the exact rational function of the wiper's position is rebuilt. Inside the room only.
 #include "circuit/reduced.hpp"
 
 namespace onehand::circuit {
@@ -8,9 +8,9 @@ namespace onehand::circuit {
 /// A state of one branch at a corner.
 struct branch_state {
     form is = form::open;
-    double ohms = 0.0;      // resistance
-    box at;                 // clamp or current: a column of its own
-    char end = ' ';         // 'l', 'h': which end of the resistance
+    double ohms = 0.0; // resistance
+    box at;            // clamp or current: a column of its own
+    char end = ' ';    // 'l', 'h': which end of the resistance
 };
 
 /// What a component can be in, and the figures asked of it.
@@ -45,9 +45,9 @@ std::vector<int> radices(const component_plan& p);
 
 /// Linear forms of all figures at one corner, at one position of the first track.
 struct corner_sample {
-    double weight = 1.0;                    // the denominator's value here, the same for all figures
-    std::vector<std::vector<double>> form;  // [figure][column]; empty: floating
-    std::vector<double> output;             // form of the held output itself
+    double weight = 1.0;                   // the denominator's value here, the same for all figures
+    std::vector<std::vector<double>> form; // [figure][column]; empty: floating
+    std::vector<double> output;            // form of the held output itself
 };
 struct corner {
     std::vector<corner_sample> samples; // one, or three with a track (positions 1/4, 1/2, 3/4)
@@ -56,7 +56,8 @@ struct corner {
 };
 corner solve_corner(const component_plan& p, const choice& at);
 
-/// Least and greatest of a figure at a corner for given column values, the first track's wiper anywhere in [from, to]. `at_low`, `at_high`: position that gives it.
+/// Least and greatest of a figure at a corner for given column values, the first track's wiper anywhere in [from, to]. `at_low`, `at_high`: position
+/// that gives it.
 struct travel_extreme {
     double low = 0.0;
     double high = 0.0;
@@ -64,7 +65,7 @@ struct travel_extreme {
     double at_high = 0.0;
     bool pole = false; // the denominator vanishes inside
 };
-travel_extreme over_travel(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms, const std::vector<double>& columns, double from,
-                           double to);
+travel_extreme over_travel(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms,
+                           const std::vector<double>& columns, double from, double to);
 
 } // namespace onehand::circuit

@@ -44,8 +44,8 @@ void refine(rc_point& p, double& slot, const box& b, double& best, const figure&
     if (std::isinf(b.high) || !(b.low > 0.0)) {
         return;
     }
-    double step = std::pow(b.high / b.low, 0.05);
-    for (int i = 0; i < 7; ++i) {
+    double step = std::pow(b.high / b.low, 0.125);
+    for (int i = 0; i < 9; ++i) {
         const double here = slot;
         double kept = here;
         for (const double there : {here / step, here * step}) {
@@ -71,7 +71,7 @@ double climb(const rc_network& n, rc_point p, const figure& f)
                 return;
             }
             double kept = slot;
-            for (const double share : {0.0, 0.1, 0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.9, 1.0}) {
+            for (const double share : {0.0, 0.25, 0.5, 0.75, 1.0}) {
                 slot = between(b, share);
                 if (const double now = f(p); now > best) {
                     best = now;
@@ -79,7 +79,9 @@ double climb(const rc_network& n, rc_point p, const figure& f)
                 }
             }
             slot = kept;
-            refine(p, slot, b, best, f);
+            if (slot != b.low && slot != b.high) {
+                refine(p, slot, b, best, f);
+            }
         };
         for (std::size_t i = 0; i < p.ohms.size(); ++i) {
             try_box(p.ohms[i], n.resistances[i].ohms);
@@ -157,7 +159,8 @@ double slowest_rate(const rc_network& n, int a, int b)
     return slow;
 }
 
-/// Energy falls at least as fast as the slowest rate, and that rate is least where every conductance is low and every capacitance high (Rayleigh's quotient).
+/// Energy falls at least as fast as the slowest rate, and that rate is least where every conductance is low and every capacitance high (Rayleigh's
+/// quotient).
 double certified_time(const rc_network& n, int a, int b, double limit)
 {
     const double farads = least_capacitance(n, a, b);
@@ -301,7 +304,8 @@ rc_pulse delivered(const rc_network& whole, int a, int b, double ohms, double se
     const bool proved = single_mode(n) && across(n, a, b);
     const auto charge = [&](const rc_point& p) { return both(p, false); };
     const auto energy = [&](const rc_point& p) { return both(p, true); };
-    // Through what is in series the pulse is greatest where the resistances beside it leak least and those in series are lowest: searched from both ends.
+    // Through what is in series the pulse is greatest where the resistances beside it leak least and those in series are lowest: searched from both
+    // ends.
     out.charge = settle(proved ? charge(middle_of(n, true)) : search(n, charge), infinity, proved);
     out.energy = settle(proved ? energy(middle_of(n, true)) : search(n, energy), infinity, proved);
     return out;

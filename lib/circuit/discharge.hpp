@@ -1,8 +1,9 @@
 #pragma once
-// Linear resistor-capacitor networks left to themselves: exact between t = 0 and for ever as sums of exponentials whose rates come from the one-sided form (singular values of
-// sqrt(G) A C^-1/2), so that the slow rate survives stiff networks. Worst cases over boxes of every resistance, capacitance and initial voltage: initial voltages exactly (the
-// response is linear in them), a network of one mode by monotonicity, others by corners, inner points and a certified bound from the slowest rate; what the bound does not
-// reach is searched and widened by a stated margin. Diodes, tubes and switches have no place here yet. Node 0 is any reference node.
+// Linear resistor-capacitor networks left to themselves: exact between t = 0 and for ever as sums of exponentials whose rates come from the one-sided
+// form (singular values of sqrt(G) A C^-1/2), so that the slow rate survives stiff networks. Worst cases over boxes of every resistance, capacitance
+// and initial voltage: initial voltages exactly (the response is linear in them), a network of one mode by monotonicity, others by corners, inner
+// points and a certified bound from the slowest rate; what the bound does not reach is searched and widened by a stated margin. Diodes, tubes and
+// switches have no place here yet. Node 0 is any reference node.
 #include "circuit/network.hpp"
 
 #include <string>
@@ -32,11 +33,11 @@ struct rc_network {
 /// A worst-case figure. `floating`: the pair is tied by nothing, there is no figure.
 struct rc_figure {
     double value = 0.0;
-    bool never = false;    // a time that never comes
-    int keeper = -1;       // the capacitor that keeps it
+    bool never = false; // a time that never comes
+    int keeper = -1;    // the capacitor that keeps it
     bool floating = false;
     bool searched = false;
-    double margin = 0.0;   // relative, already in value
+    double margin = 0.0; // relative, already in value
 };
 
 /// The last time |v(a) - v(b)| exceeds `limit` volt; 0 if it never does.

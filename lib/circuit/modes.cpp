@@ -222,6 +222,103 @@ std::vector<bool> reached(const rc_network& n, int a, int b, int start, int cut)
     return seen;
 }
 
+box sum_of(const box& x, const box& y)
+{
+    return {x.low + y.low, x.high + y.high};
+}
+
+/// Resistances side by side: conductances add.
+box beside(const box& x, const box& y)
+{
+    const auto both = [](double p, double q) {
+        if (!std::isfinite(p)) {
+            return q;
+        }
+        return std::isfinite(q) ? p * q / std::max(p + q, 1e-300) : p;
+    };
+    return {both(x.low, y.low), both(x.high, y.high)};
+}
+
+bool same_ends(int a, int b, int c, int d)
+{
+    return (a == c && b == d) || (a == d && b == c);
+}
+
+/// Strings and parallels of independent resistances are one resistance whose box is exact; capacitors side by side are one.
+class merger {
+public:
+    merger(rc_network& n, int a, int b) : n_(n), a_(a), b_(b) {}
+
+    void run()
+    {
+        while (merge_parallel() || merge_series()) {
+        }
+        merge_capacitors();
+    }
+
+private:
+    bool merge_parallel()
+    {
+        auto& list = n_.resistances;
+        for (std::size_t i = 0; i < list.size(); ++i) {
+            for (std::size_t j = i + 1; j < list.size(); ++j) {
+                if (same_ends(list[i].a, list[i].b, list[j].a, list[j].b)) {
+                    list[i].ohms = beside(list[i].ohms, list[j].ohms);
+                    list.erase(list.begin() + static_cast<std::ptrdiff_t>(j));
+                    return true;
+                }
+            }
+        }
+        return false;
+    }
+
+    bool merge_series()
+    {
+        auto& list = n_.resistances;
+        for (int node = 0; node < n_.nodes; ++node) {
+            std::vector<std::size_t> here;
+            for (std::size_t i = 0; i < list.size(); ++i) {
+                if (list[i].a == node || list[i].b == node) {
+                    here.push_back(i);
+                }
+            }
+            const bool stored =
+                std::any_of(n_.capacitors.begin(), n_.capacitors.end(), [&](const rc_capacitor& c) { return c.plus == node || c.minus == node; });
+            if (here.size() != 2 || stored || node == a_ || node == b_) {
+                continue;
+            }
+            const rc_resistance x = list[here[0]];
+            const rc_resistance y = list[here[1]];
+            list[here[0]] = {x.a == node ? x.b : x.a, y.a == node ? y.b : y.a, sum_of(x.ohms, y.ohms)};
+            list.erase(list.begin() + static_cast<std::ptrdiff_t>(here[1]));
+            return true;
+        }
+        return false;
+    }
+
+    void merge_capacitors()
+    {
+        auto& list = n_.capacitors;
+        for (std::size_t i = 0; i < list.size(); ++i) {
+            for (std::size_t j = i + 1; j < list.size();) {
+                if (!same_ends(list[i].plus, list[i].minus, list[j].plus, list[j].minus)) {
+                    ++j;
+                    continue;
+                }
+                const box volts = list[j].plus == list[i].plus ? list[j].volts : box{-list[j].volts.high, -list[j].volts.low};
+                list[i].farads = sum_of(list[i].farads, list[j].farads);
+                list[i].volts = {std::min(list[i].volts.low, volts.low), std::max(list[i].volts.high, volts.high)};
+                list.erase(list.begin() + static_cast<std::ptrdiff_t>(j));
+                n_.original.erase(n_.original.begin() + static_cast<std::ptrdiff_t>(j));
+            }
+        }
+    }
+
+    rc_network& n_;
+    int a_;
+    int b_;
+};
+
 } // namespace
 
 rc_network island_of(const rc_network& n, int a, int b)
@@ -252,6 +349,7 @@ rc_network island_of(const rc_network& n, int a, int b)
             out.original.push_back(static_cast<int>(i));
         }
     }
+    merger(out, a, b).run();
     return out;
 }
 
@@ -279,7 +377,8 @@ double turning_point(const rc_modes& m, const std::vector<rc_capacitor>& capacit
     for (int i = 0; i < 60; ++i) {
         const double one = from + (to - from) / 3.0;
         const double two = to - (to - from) / 3.0;
-        (m.envelope(capacitors, one) < m.envelope(capacitors, two) ? from : to) = m.envelope(capacitors, one) < m.envelope(capacitors, two) ? one : two;
+        (m.envelope(capacitors, one) < m.envelope(capacitors, two) ? from : to) =
+            m.envelope(capacitors, one) < m.envelope(capacitors, two) ? one : two;
     }
     return 0.5 * (from + to);
 }
@@ -311,9 +410,19 @@ double last_time(const rc_modes& m, const std::vector<rc_capacitor>& capacitors,
     if (fast == 0.0) {
         return 0.0;
     }
-    constexpr int steps = 400;
+    // Beyond this the slowest mode alone, with all amplitudes added up, is below the limit.
+    double all = 0.0;
+    for (const std::vector<double>& by_capacitor : m.share) {
+        for (std::size_t c = 0; c < by_capacitor.size(); ++c) {
+            all += std::abs(by_capacitor[c]) * std::max(std::abs(capacitors[c].volts.low), std::abs(capacitors[c].volts.high));
+        }
+    }
+    if (all <= limit) {
+        return 0.0;
+    }
+    constexpr int steps = 160;
     const double first = 1e-3 / fast;
-    const double end = 800.0 / slow;
+    const double end = std::max(2.0 * first, 1.01 * std::log(all / std::max(limit, 1e-300)) / slow);
     const double factor = std::pow(end / first, 1.0 / steps);
     std::vector<double> times{0.0};
     for (int i = 0; i <= steps; ++i) {
@@ -324,7 +433,8 @@ double last_time(const rc_modes& m, const std::vector<rc_capacitor>& capacitors,
         if (m.envelope(capacitors, times[i]) > limit) {
             return crossing(m, capacitors, limit, times[i], times[i + 1]);
         }
-        const bool hump = i > 0 && m.envelope(capacitors, times[i]) >= m.envelope(capacitors, times[i - 1]) && m.envelope(capacitors, times[i]) >= m.envelope(capacitors, times[i + 1]);
+        const bool hump = i > 0 && m.envelope(capacitors, times[i]) >= m.envelope(capacitors, times[i - 1]) &&
+                          m.envelope(capacitors, times[i]) >= m.envelope(capacitors, times[i + 1]);
         if (hump) {
             const double top = turning_point(m, capacitors, times[i - 1], times[i + 1]);
             if (m.envelope(capacitors, top) > limit) {

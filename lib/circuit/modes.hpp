@@ -6,7 +6,7 @@ namespace onehand::circuit {
 
 /// Values of one point of the boxes.
 struct rc_point {
-    std::vector<double> ohms;   // infinity: absent
+    std::vector<double> ohms; // infinity: absent
     std::vector<double> farads;
 };
 

@@ -1,8 +1,9 @@
 #pragma once
-// A d.c. network of ideal elements on plain SI numbers, every value a box it may lie in, and the extremes of its voltages, currents and powers over all boxes at once.
-// In a linear network each node voltage, and a held set point, is a ratio of two affine functions of any one conductance and affine in every source: its extremes lie on
-// corners, which are enumerated. Not on corners: a resistance's own power (peaks at the match), and a track's wiper, whose two halves are one variable (both extremes are
-// found in closed form). Where there are too many parameters to enumerate the figure is searched, widened by a stated margin and says so. Node 0 is the return.
+// A d.c. network of ideal elements on plain SI numbers, every value a box it may lie in, and the extremes of its voltages, currents and powers over
+// all boxes at once. In a linear network each node voltage, and a held set point, is a ratio of two affine functions of any one conductance and
+// affine in every source: its extremes lie on corners, which are enumerated. Not on corners: a resistance's own power (peaks at the match), and a
+// track's wiper, whose two halves are one variable (both extremes are found in closed form). Where there are too many parameters to enumerate the
+// figure is searched, widened by a stated margin and says so. Node 0 is the return.
 #include <optional>
 #include <vector>
 
@@ -78,7 +79,7 @@ struct output_end {
     enum class of { branch, track, track_position, source, threshold, bias };
     of what = of::branch;
     int index = 0;
-    char at_low = ' ';  // 'l' low end, 'h' high end, 'i' inside
+    char at_low = ' '; // 'l' low end, 'h' high end, 'i' inside
     char at_high = ' ';
 };
 
@@ -86,12 +87,12 @@ struct solution {
     bool feedback_lost = false; // at some setting the sense no longer depends on the output, or no output above zero holds it
     extreme output;             // of the held output
     std::vector<output_end> set_by;
-    std::vector<bool> floating;                      // per node: in some case nothing holds it
-    std::vector<std::vector<extreme>> voltage;       // [a][b]: a above b, cases in which either floats not counted
-    std::vector<extreme> current;                    // per branch, from -> to
-    std::vector<extreme> power;                      // per branch, in its resistance or clamp
-    std::vector<extreme> track_current;              // the greater section's magnitude
-    std::vector<extreme> track_power;                // whole track
+    std::vector<bool> floating;                // per node: in some case nothing holds it
+    std::vector<std::vector<extreme>> voltage; // [a][b]: a above b, cases in which either floats not counted
+    std::vector<extreme> current;              // per branch, from -> to
+    std::vector<extreme> power;                // per branch, in its resistance or clamp
+    std::vector<extreme> track_current;        // the greater section's magnitude
+    std::vector<extreme> track_power;          // whole track
 };
 
 solution solve(const network& n);

@@ -34,7 +34,8 @@ void merge_closed(const network& n, reduced& r)
 {
     union_find joined(n.nodes);
     for (const branch& b : n.branches) {
-        const bool always = !b.options.empty() && std::all_of(b.options.begin(), b.options.end(), [](const option& o) { return o.is == form::closed; });
+        const bool always =
+            !b.options.empty() && std::all_of(b.options.begin(), b.options.end(), [](const option& o) { return o.is == form::closed; });
         if (always) {
             joined.join(b.from, b.to);
         }
@@ -67,7 +68,8 @@ box hull_of(const reduced& r, const combination& a, const combination& b)
     return out;
 }
 
-/// Spreads known potentials over the sources until nothing changes. Two different potentials on one cluster (a bridge between held nets) leave it anywhere between.
+/// Spreads known potentials over the sources until nothing changes. Two different potentials on one cluster (a bridge between held nets) leave it
+/// anywhere between.
 void hold(const network& n, reduced& r)
 {
     struct link {

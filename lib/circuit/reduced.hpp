@@ -1,5 +1,6 @@
 #pragma once
-// The network with its surely closed branches merged, its held nodes told as sums of sources, and the rest split into components that no held node joins. Inside the room only.
+// The network with its surely closed branches merged, its held nodes told as sums of sources, and the rest split into components that no held node
+// joins. Inside the room only.
 #include "circuit/network.hpp"
 
 #include <cstddef>
@@ -18,13 +19,13 @@ struct component {
 };
 
 struct reduced {
-    std::vector<int> cluster_of;                         // per node
+    std::vector<int> cluster_of; // per node
     int clusters = 0;
-    std::vector<std::optional<combination>> potential;   // per cluster; nothing: unknown
-    std::vector<box> sources;                            // boxes of the global columns; the output's box is filled in once it is found
-    int output_column = -1;                              // -1: not held by feedback
+    std::vector<std::optional<combination>> potential; // per cluster; nothing: unknown
+    std::vector<box> sources;                          // boxes of the global columns; the output's box is filled in once it is found
+    int output_column = -1;                            // -1: not held by feedback
     std::vector<component> components;
-    std::vector<int> component_of;                       // per cluster; -1: held
+    std::vector<int> component_of; // per cluster; -1: held
 };
 
 reduced reduce(const network& n);

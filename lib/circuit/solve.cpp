@@ -94,7 +94,9 @@ private:
             if (low == high) {
                 continue;
             }
-            const auto what = c == p.threshold_column ? output_end::of::threshold : c == p.threshold_column + 1 ? output_end::of::bias : output_end::of::source;
+            const auto what = c == p.threshold_column       ? output_end::of::threshold
+                              : c == p.threshold_column + 1 ? output_end::of::bias
+                                                            : output_end::of::source;
             if (what != output_end::of::source || at(c) < p.red->sources.size()) {
                 out.set_by.push_back({what, c, low, high});
             }

@@ -170,7 +170,8 @@ private:
         }
     }
 
-    /// A clamp conducts one way only. Where its current would run backwards it is open; the boundary between the two is a point of the open case, which is visited as such.
+    /// A clamp conducts one way only. Where its current would run backwards it is open; the boundary between the two is a point of the open case,
+    /// which is visited as such.
     bool against_a_clamp(const choice& chosen, const std::vector<travel_extreme>& told) const
     {
         for (std::size_t f = 0; f < p_.figures.size(); ++f) {
@@ -241,8 +242,8 @@ private:
         }
     }
 
-    /// Places along the travel, closer towards both ends: a section's power peaks where its resistance matches what feeds it, which may be a small share of the track. Neighbours
-    /// differ by a quarter, so the peak of p/(p + a)^2 lies at most 0.4 % above the best of them.
+    /// Places along the travel, closer towards both ends: a section's power peaks where its resistance matches what feeds it, which may be a small
+    /// share of the track. Neighbours differ by a quarter, so the peak of p/(p + a)^2 lies at most 0.4 % above the best of them.
     std::vector<double> places() const
     {
         std::vector<double> list{from_, to_};
@@ -282,7 +283,8 @@ private:
         }
     }
 
-    /// A resistance's own power peaks where it matches what feeds it: 1/V is affine in its conductance, so the peak follows from both ends of its box.
+    /// A resistance's own power peaks where it matches what feeds it: 1/V is affine in its conductance, so the peak follows from both ends of its
+    /// box.
     void add_matches(std::size_t count)
     {
         const std::vector<int> base = radices(p_);
@@ -318,7 +320,8 @@ private:
             const double start = 1.0 / v1 - slope * g1;
             const double peak_at = start / slope;
             if (tracked) {
-                // With a wiper in its travel the ends belong to different positions: current rises and voltage falls with conductance, so their product bounds the power.
+                // With a wiper in its travel the ends belong to different positions: current rises and voltage falls with conductance, so their
+                // product bounds the power.
                 if (peak_at > 0.25 * g2 && peak_at < 4.0 * g1) {
                     widen(out_.power[b], out_.power[b].low, v1 * g1 * v2);
                 }
@@ -329,8 +332,8 @@ private:
         }
     }
 
-    /// Too many corners: for every figure and direction, from the best corner seen so far, one choice at a time until nothing grows. The figures are monotone in each choice, so this
-    /// climbs to a corner that no single change betters; that it is the best of all is not proved.
+    /// Too many corners: for every figure and direction, from the best corner seen so far, one choice at a time until nothing grows. The figures are
+    /// monotone in each choice, so this climbs to a corner that no single change betters; that it is the best of all is not proved.
     void search()
     {
         const std::vector<int> base = radices(p_);
@@ -389,9 +392,9 @@ private:
     double to_ = 0.0;
     std::vector<at_corner> voltages_;
     std::vector<figure_extreme> signs_;
-    std::set<choice> seen_;             // search only
-    std::vector<best_corner> best_;     // search only: per figure, high and low
-    const choice* current_ = nullptr;   // search only
+    std::set<choice> seen_;           // search only
+    std::vector<best_corner> best_;   // search only: per figure, high and low
+    const choice* current_ = nullptr; // search only
 };
 
 } // namespace

@@ -1,6 +1,6 @@
 #pragma once
-// All corners of one component: the extremes of every figure, kept apart by the corner of the global sources so that figures of two components can be combined exactly.
-// Inside the room only.
+// All corners of one component: the extremes of every figure, kept apart by the corner of the global sources so that figures of two components can be
+// combined exactly. Inside the room only.
 #include "circuit/corner.hpp"
 
 namespace onehand::circuit {
@@ -20,8 +20,8 @@ struct output_corner {
 };
 
 struct sweep_result {
-    std::vector<int> active;      // columns that are boxes here and matter: globals first
-    int global_active = 0;        // how many of them are globals
+    std::vector<int> active;                             // columns that are boxes here and matter: globals first
+    int global_active = 0;                               // how many of them are globals
     std::vector<std::vector<figure_extreme>> by_globals; // [figure][corner of the active globals]
     std::vector<figure_extreme> power;                   // per branch of the component
     std::vector<figure_extreme> track_power;             // per track

@@ -63,7 +63,8 @@ private:
         while (value.ends_with(' ') || value.ends_with('\t')) {
             value.remove_suffix(1);
         }
-        const bool number_first = !value.empty() && (std::isdigit(static_cast<unsigned char>(value[0])) != 0 || value[0] == '.' || value[0] == '+' || value[0] == '-');
+        const bool number_first =
+            !value.empty() && (std::isdigit(static_cast<unsigned char>(value[0])) != 0 || value[0] == '.' || value[0] == '+' || value[0] == '-');
         const bool quotes = value.find_first_of("\"'") != std::string_view::npos;
         if (number_first && !quotes && unquoted_quantity(value)) {
             return complain("a value with a unit is text: quote it, \"" + std::string(value) + "\"");

@@ -7,7 +7,8 @@ namespace onehand {
 inline constexpr std::size_t size_limit = 1U << 20U; // bytes
 inline constexpr int depth_limit = 32;
 
-/// The first thing that stands outside quotes and comments and can be no TOML: an unquoted quantity, a character beyond ASCII, a word instead of a value.
+/// The first thing that stands outside quotes and comments and can be no TOML: an unquoted quantity, a character beyond ASCII, a word instead of a
+/// value.
 std::optional<complaint> check_text(std::string_view text, const document& doc);
 
 } // namespace onehand

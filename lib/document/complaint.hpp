@@ -12,10 +12,10 @@ enum class gravity { mistake, note }; // a note does not stop an audit
 
 struct complaint {
     place at;
-    std::string message;            // one line, lower case start, no full stop: "unknown key 'valeu'; nearest known name: value"
-    std::string excerpt;            // the line it stands on, as written
+    std::string message; // one line, lower case start, no full stop: "unknown key 'valeu'; nearest known name: value"
+    std::string excerpt; // the line it stands on, as written
     gravity weight = gravity::mistake;
-    std::optional<place> also;      // the second place of a contradiction
+    std::optional<place> also; // the second place of a contradiction
     std::string also_excerpt;
 };
 

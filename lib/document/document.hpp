@@ -18,13 +18,13 @@ enum class node_kind { text, number, truth, list, table };
 struct node {
     node_kind kind = node_kind::table;
     place at;
-    std::string text;          // node_kind::text
-    double number = 0.0;       // node_kind::number (integer or float)
-    bool integer = false;      // written without point or exponent
+    std::string text;     // node_kind::text
+    double number = 0.0;  // node_kind::number (integer or float)
+    bool integer = false; // written without point or exponent
     bool truth = false;
-    bool inline_table = false; // written in braces
-    bool basic_text = true;    // one line, no escapes: column of code point i inside the text is at.column + 1 + i
-    std::vector<node> items;   // list
+    bool inline_table = false;  // written in braces
+    bool basic_text = true;     // one line, no escapes: column of code point i inside the text is at.column + 1 + i
+    std::vector<node> items;    // list
     std::vector<entry> entries; // table
 
     const entry* find(std::string_view key) const;

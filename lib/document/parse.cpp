@@ -86,7 +86,8 @@ std::string reworded(std::string_view said, const std::string& line)
     if (line.find(':') != std::string::npos && line.find('=') == std::string::npos && line.find('[') == std::string::npos) {
         return "a key and its value are joined by '=', not ':'";
     }
-    if (said.find("inline table") != std::string_view::npos && (said.find("newline") != std::string_view::npos || said.find("line break") != std::string_view::npos)) {
+    if (said.find("inline table") != std::string_view::npos &&
+        (said.find("newline") != std::string_view::npos || said.find("line break") != std::string_view::npos)) {
         return "a table in braces stands on one line: use [kind.R1] for more lines";
     }
     if (said.find("trailing comma") != std::string_view::npos) {

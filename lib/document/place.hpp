@@ -1,5 +1,6 @@
 #pragma once
-// Where something was written: file, line and column, both 1-based, columns counted in code points. line 0: no place (a value that was computed or is absent).
+// Where something was written: file, line and column, both 1-based, columns counted in code points. line 0: no place (a value that was computed or is
+// absent).
 #include <cstdint>
 #include <string>
 

@@ -10,7 +10,8 @@ volt rated_voltage(watt p, ohm r, volt limiting);
 /// Power left at an air temperature: full up to `full_to`, linearly to nothing at `none_at`.
 watt derated(watt full, kelvin air, kelvin full_to, kelvin none_at);
 
-/// Current into a body from a source with series resistance, power limit and current limit: the least of U/(Rb + Rs), sqrt(P/Rb) and the limit (derived).
+/// Current into a body from a source with series resistance, power limit and current limit: the least of U/(Rb + Rs), sqrt(P/Rb) and the limit
+/// (derived).
 ampere body_current(volt open_circuit, ohm body, ohm series, watt power_limit, ampere current_limit);
 
 /// U R2/(R1 + R2).

@@ -1,6 +1,6 @@
 #pragma once
-// Energy and charge in capacitors and what they do through a resistance; each formula with its limits. Typed by Boost.Units: a wrong dimension does not compile.
-// Textbook relations (University Physics vol. 2, chapters 8 and 10).
+// Energy and charge in capacitors and what they do through a resistance; each formula with its limits. Typed by Boost.Units: a wrong dimension does
+// not compile. Textbook relations (University Physics vol. 2, chapters 8 and 10).
 #include "quantity/bridge.hpp"
 
 #include <optional>

@@ -9,8 +9,9 @@ namespace {
 std::optional<element_spec::form> form_named(const std::string& word)
 {
     using form = element_spec::form;
-    static const std::pair<const char*, form> words[] = {{"open", form::open},       {"closed", form::closed},           {"resistance", form::resistance}, {"clamp", form::clamp},
-                                                         {"current", form::current}, {"capacitance", form::capacitance}, {"inductance", form::inductance}, {"track", form::track}};
+    static const std::pair<const char*, form> words[] = {
+        {"open", form::open},       {"closed", form::closed},           {"resistance", form::resistance}, {"clamp", form::clamp},
+        {"current", form::current}, {"capacitance", form::capacitance}, {"inductance", form::inductance}, {"track", form::track}};
     for (const auto& [known, f] : words) {
         if (word == known) {
             return f;
@@ -98,8 +99,10 @@ field_spec read_field(const document& doc, const entry& e, const library& lib, s
     f.at = e.key_at;
     table_reader r(doc, e.value, e.key_at, complaints);
     const std::string word = r.text("dimension", true);
-    static const std::pair<const char*, field_spec::type> types[] = {
-        {"truth", field_spec::type::truth}, {"choice", field_spec::type::choice}, {"text", field_spec::type::text}, {"count", field_spec::type::count}};
+    static const std::pair<const char*, field_spec::type> types[] = {{"truth", field_spec::type::truth},
+                                                                     {"choice", field_spec::type::choice},
+                                                                     {"text", field_spec::type::text},
+                                                                     {"count", field_spec::type::count}};
     for (const auto& [name, type] : types) {
         f.holds = word == name ? type : f.holds;
     }

@@ -9,9 +9,12 @@ namespace onehand {
 std::string word_for(basis b)
 {
     switch (b) {
-    case basis::confirmed: return "confirmed";
-    case basis::memory: return "memory";
-    default: return "practice";
+    case basis::confirmed:
+        return "confirmed";
+    case basis::memory:
+        return "memory";
+    default:
+        return "practice";
     }
 }
 
@@ -125,7 +128,8 @@ private:
                 known.push_back(s.key);
             }
             const std::string near = nearest_name(c.cite, known);
-            complaints_.push_back(doc.complain(c.at, "no source '" + c.cite + "' in sources.toml" + (near.empty() ? "" : "; nearest known name: " + near)));
+            complaints_.push_back(
+                doc.complain(c.at, "no source '" + c.cite + "' in sources.toml" + (near.empty() ? "" : "; nearest known name: " + near)));
         }
     }
 

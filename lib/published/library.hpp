@@ -38,38 +38,40 @@ enum class interpolation { linear, step_up, none };
 /// A published table: rows over one numeric axis, or over a choice (package, surface). The printed cells are kept as text; the numbers are SI.
 struct table {
     struct column {
-        std::string name;   // "PD2-III", "ES2", "limiting-voltage"
-        std::string unit;   // as printed, "mm"
+        std::string name; // "PD2-III", "ES2", "limiting-voltage"
+        std::string unit; // as printed, "mm"
         dimension dim{};
     };
     std::string id;
     std::string title;
     citation from;
     std::string conditions;
-    std::string axis_name;   // "voltage" or, for a choice table, the field name "package"
-    std::string axis_unit;   // empty for a choice table
+    std::string axis_name; // "voltage" or, for a choice table, the field name "package"
+    std::string axis_unit; // empty for a choice table
     dimension axis_dim{};
     bool by_choice = false;
     std::vector<column> columns;
     interpolation between_rows = interpolation::none;
     std::string interpolation_source;
-    bool open_low = false;   // the first row is printed "or less": it holds below
-    bool open_high = false;  // the last row is printed "or greater": it holds above
-    std::vector<std::vector<std::string>> printed; // axis cell first, then one cell a column; "-" where the source prints none; a cell of a choice table may hold several values "50 V, 75 V"
+    bool open_low = false;                         // the first row is printed "or less": it holds below
+    bool open_high = false;                        // the last row is printed "or greater": it holds above
+    std::vector<std::vector<std::string>> printed; // axis cell first, then one cell a column; "-" where the source prints none; a cell of a choice
+                                                   // table may hold several values "50 V, 75 V"
     std::vector<double> axis;                      // SI, ascending or descending as printed
     std::vector<std::string> choices;              // by_choice
     std::vector<std::vector<std::vector<double>>> cells; // [row][column] -> SI values (none, one, or several where sources disagree)
     struct check {
-        std::string at;      // axis value or choice
+        std::string at; // axis value or choice
         std::string column;
-        std::string gives;   // empty: must be refused
+        std::string gives; // empty: must be refused
         place where;
     };
     std::vector<check> checks;
     place at;
 };
 
-/// The extremes of a table column over an axis spread, every printed row inside the spread counted. Empty with a reason outside the printed rows or on a "-" cell.
+/// The extremes of a table column over an axis spread, every printed row inside the spread counted. Empty with a reason outside the printed rows or
+/// on a "-" cell.
 struct table_answer {
     std::optional<spread> figure;
     std::string reason; // "8 V is below the first printed row, 10 V"
@@ -88,22 +90,22 @@ struct field_spec {
     type holds = type::quantity;
     dimension dim{};
     std::string meaning;
-    bool varies = false;            // its range is use, not tolerance (load current, position)
-    bool positive = true;           // negative values are refused; one-sided figures end at zero
+    bool varies = false;  // its range is use, not tolerance (load current, position)
+    bool positive = true; // negative values are refused; one-sided figures end at zero
     std::vector<std::string> choices;
-    std::string from_table;         // where a missing value comes from: table id, read by the choice field `by`
+    std::string from_table; // where a missing value comes from: table id, read by the choice field `by`
     std::string by;
     std::string column;
-    bool limit_is_low = true;       // the worst end of several published values: low for a rating
-    std::string bounds;             // which fact this rating bounds: "voltage", "power", "current"
-    std::string per;                // may be written per this other field (a cable's capacitance per length)
+    bool limit_is_low = true; // the worst end of several published values: low for a rating
+    std::string bounds;       // which fact this rating bounds: "voltage", "power", "current"
+    std::string per;          // may be written per this other field (a cable's capacitance per length)
     place at;
 };
 
 /// How terminals are written: `nets = [a, b]`, or one key a terminal.
 struct terminal_key {
-    std::string key;    // "nets", "ends", "anode", "cathodes", "poles", "wiper"
-    int count = 1;      // 1: one net as text; n > 1: an array of n nets; 0: an array of one or more nets; -1: an array of pairs (connector poles)
+    std::string key; // "nets", "ends", "anode", "cathodes", "poles", "wiper"
+    int count = 1;   // 1: one net as text; n > 1: an array of n nets; 0: an array of one or more nets; -1: an array of pairs (connector poles)
     std::vector<std::string> names; // canonical terminal names it fills ("first","second"); a star is replaced by 1, 2, ... ("cathode-*")
     bool optional = false;
 };
@@ -115,17 +117,17 @@ struct terminal_form {
 /// One ideal element between two canonical terminals, as solved in given states.
 struct element_spec {
     enum class form { open, closed, resistance, clamp, current, capacitance, inductance, track };
-    std::string from;                 // canonical terminal name; with a star it stands once for each that is there
+    std::string from; // canonical terminal name; with a star it stands once for each that is there
     std::string to;
-    std::vector<form> forms;          // several: any one of them may be the case (a tube dark or lit)
+    std::vector<form> forms;                  // several: any one of them may be the case (a tube dark or lit)
     std::map<std::string, std::string> field; // form name -> field that gives its value ("resistance" -> "value")
-    std::vector<std::string> states;  // empty: all; else "running", "no-load", "standby", "switched-off", "start-up"
-    bool holds_charge_path = false;   // a soldered resistive path: counts for discharge (law 4)
+    std::vector<std::string> states;          // empty: all; else "running", "no-load", "standby", "switched-off", "start-up"
+    bool holds_charge_path = false;           // a soldered resistive path: counts for discharge (law 4)
     place at;
 };
 
 struct failure_spec {
-    std::string mode;                 // "open", "short", "wiper-open", "track-open-1", ...
+    std::string mode; // "open", "short", "wiper-open", "track-open-1", ...
     std::string meaning;
     std::vector<element_spec> elements; // what replaces the elements between the same terminals
     citation from;
@@ -139,8 +141,8 @@ struct kind_spec {
     std::vector<field_spec> fields;
     std::vector<element_spec> elements;
     std::vector<failure_spec> failures;
-    std::string main_field;    // what --set R9=470k sets: the first quantity
-    std::string voltage_from;  // canonical terminals its `voltage` fact is told between
+    std::string main_field;   // what --set R9=470k sets: the first quantity
+    std::string voltage_from; // canonical terminals its `voltage` fact is told between
     std::string voltage_to;
     place at;
 
@@ -150,8 +152,8 @@ struct kind_spec {
 /// An ordered set of conditions from a standard; the expressions are compiled by the rule room.
 struct class_text {
     struct step {
-        std::string name;   // "ES1"
-        std::string holds;  // expression
+        std::string name;  // "ES1"
+        std::string holds; // expression
         place holds_at;
         bool basic_text = true;
     };
@@ -166,9 +168,9 @@ struct class_text {
 
 /// A limit set: the rules that cite one of these sources; the settings that pick it.
 struct limit_set {
-    std::string name;                   // "IEC 62368-1"
-    std::vector<std::string> sources;   // source keys
-    std::vector<std::string> settings;  // "teaching lab", ...
+    std::string name;                  // "IEC 62368-1"
+    std::vector<std::string> sources;  // source keys
+    std::vector<std::string> settings; // "teaching lab", ...
     std::string note;
     place at;
 };
@@ -194,7 +196,8 @@ struct library_result {
     std::vector<complaint> complaints;
 };
 
-/// `own` are a shop's files (from --rules DIR), named as shown to the user; they may add sources, tables, kinds, classes and rules; a reused id is a complaint.
+/// `own` are a shop's files (from --rules DIR), named as shown to the user; they may add sources, tables, kinds, classes and rules; a reused id is a
+/// complaint.
 library_result load_library(const std::vector<rule_text>& built_in, const std::vector<rule_text>& own = {});
 
 } // namespace onehand

@@ -52,7 +52,9 @@ reading read_at(const table& t, const axis_view& v, std::size_t column, double x
         const auto& values = t.cells[v.row[i]][column];
         return values.empty() ? std::nullopt : std::optional(values.front());
     };
-    const auto none_printed = [&](double at) { return reading{std::nullopt, "nothing is printed in column " + t.columns[column].name + " at " + figure(t, at)}; };
+    const auto none_printed = [&](double at) {
+        return reading{std::nullopt, "nothing is printed in column " + t.columns[column].name + " at " + figure(t, at)};
+    };
     if (x < v.x.front()) {
         if (!t.open_low) {
             return {std::nullopt, figure(t, x) + " is below the first printed row, " + figure(t, v.x.front())};
@@ -75,9 +77,12 @@ reading read_at(const table& t, const axis_view& v, std::size_t column, double x
         return none_printed(x);
     }
     switch (t.between_rows) {
-    case interpolation::linear: return {*y0 + (*y1 - *y0) * (x - v.x[upper - 1]) / (v.x[upper] - v.x[upper - 1]), {}};
-    case interpolation::step_up: return {y1, {}};
-    default: return {std::nullopt, figure(t, x) + " lies between printed rows, and the source allows no reading there"};
+    case interpolation::linear:
+        return {*y0 + (*y1 - *y0) * (x - v.x[upper - 1]) / (v.x[upper] - v.x[upper - 1]), {}};
+    case interpolation::step_up:
+        return {y1, {}};
+    default:
+        return {std::nullopt, figure(t, x) + " lies between printed rows, and the source allows no reading there"};
     }
 }
 

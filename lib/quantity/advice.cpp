@@ -27,7 +27,8 @@ bool all_digits(std::string_view text)
 
 bool number_then(std::string_view text, std::string_view tail)
 {
-    return text.size() > tail.size() && text.ends_with(tail) && (std::isdigit(static_cast<unsigned char>(text[text.size() - tail.size() - 1])) != 0 || text[text.size() - tail.size() - 1] == ' ');
+    return text.size() > tail.size() && text.ends_with(tail) &&
+           (std::isdigit(static_cast<unsigned char>(text[text.size() - tail.size() - 1])) != 0 || text[text.size() - tail.size() - 1] == ' ');
 }
 
 std::string three_digits(std::string_view text, const dimension& expected)
@@ -40,7 +41,8 @@ std::string three_digits(std::string_view text, const dimension& expected)
     for (int zeros = text[2] - '0'; zeros > 0; --zeros) {
         value *= 10.0;
     }
-    return "'" + std::string(text) + "' is a bare number, or the three-digit code for " + format_quantity({cap ? value * 1e-12 : value, expected}) + ": write the value with its unit";
+    return "'" + std::string(text) + "' is a bare number, or the three-digit code for " + format_quantity({cap ? value * 1e-12 : value, expected}) +
+           ": write the value with its unit";
 }
 
 std::string about_ranges(std::string_view text)
@@ -49,8 +51,9 @@ std::string about_ranges(std::string_view text)
         return "a dash between two values is read two ways: a range is written \"12 V .. 15 V\"";
     }
     const std::size_t dash = text.find('-', 1);
-    if (dash != std::string_view::npos && text[dash - 1] != '+' && text[dash - 1] != '/' && text[dash - 1] != 'e' && text[dash - 1] != 'E' && dash + 1 < text.size() &&
-        std::isdigit(static_cast<unsigned char>(text[dash + 1])) != 0 && std::isdigit(static_cast<unsigned char>(text[0])) != 0) {
+    if (dash != std::string_view::npos && text[dash - 1] != '+' && text[dash - 1] != '/' && text[dash - 1] != 'e' && text[dash - 1] != 'E' &&
+        dash + 1 < text.size() && std::isdigit(static_cast<unsigned char>(text[dash + 1])) != 0 &&
+        std::isdigit(static_cast<unsigned char>(text[0])) != 0) {
         return "'" + std::string(text) + "' is a range or a difference: a range is written \"12 V .. 15 V\"";
     }
     if (has(lower(text), " to ")) {
@@ -92,11 +95,46 @@ std::string about_case(std::string_view text)
     struct row {
         std::string_view wrong, right;
     };
-    static constexpr row rows[] = {{"KV", "kV"}, {"Kohm", "kohm"}, {"K\u03a9", "k\u03a9"}, {"KHz", "kHz"}, {"khz", "kHz"}, {"MHZ", "MHz"}, {"hz", "Hz"}, {"HZ", "Hz"},
-                                   {"uf", "uF"}, {"nf", "nF"}, {"pf", "pF"}, {"UF", "uF"}, {"mh", "mH"}, {"uh", "uH"}, {"ma", "mA"}, {"mv", "mV"}, {"kv", "kV"},
-                                   {"MM", "mm"}, {"Mm", "mm"}, {"mw", "mW"}, {"sec", "s"}, {"secs", "s"}, {"seconds", "s"}, {"min", "minutes"}, {"volts", "V"}, {"amps", "A"},
-                                   {"watts", "W"}, {"watt", "W"}, {"v", "V"}, {"a", "A"}, {"w", "W"}, {"S", "s"}, {"deg", "degC"}, {"\u00ba" "C", "degC"}, {"celsius", "degC"},
-                                   {"inch", "in"}, {"mils", "mil"}, {"R", "ohm"}};
+    static constexpr row rows[] = {{"KV", "kV"},
+                                   {"Kohm", "kohm"},
+                                   {"K\u03a9", "k\u03a9"},
+                                   {"KHz", "kHz"},
+                                   {"khz", "kHz"},
+                                   {"MHZ", "MHz"},
+                                   {"hz", "Hz"},
+                                   {"HZ", "Hz"},
+                                   {"uf", "uF"},
+                                   {"nf", "nF"},
+                                   {"pf", "pF"},
+                                   {"UF", "uF"},
+                                   {"mh", "mH"},
+                                   {"uh", "uH"},
+                                   {"ma", "mA"},
+                                   {"mv", "mV"},
+                                   {"kv", "kV"},
+                                   {"MM", "mm"},
+                                   {"Mm", "mm"},
+                                   {"mw", "mW"},
+                                   {"sec", "s"},
+                                   {"secs", "s"},
+                                   {"seconds", "s"},
+                                   {"min", "minutes"},
+                                   {"volts", "V"},
+                                   {"amps", "A"},
+                                   {"watts", "W"},
+                                   {"watt", "W"},
+                                   {"v", "V"},
+                                   {"a", "A"},
+                                   {"w", "W"},
+                                   {"S", "s"},
+                                   {"deg", "degC"},
+                                   {"\u00ba"
+                                    "C",
+                                    "degC"},
+                                   {"celsius", "degC"},
+                                   {"inch", "in"},
+                                   {"mils", "mil"},
+                                   {"R", "ohm"}};
     for (const row& r : rows) {
         if (number_then(text, r.wrong)) {
             return "no unit '" + std::string(r.wrong) + "': it is written \"" + std::string(r.right) + "\"";
@@ -129,10 +167,22 @@ std::string example_of(const dimension& expected)
         dimension dim;
         std::string_view example;
     };
-    static constexpr row rows[] = {{dim::voltage, "12 V"}, {dim::current, "20 mA"}, {dim::resistance, "4.7 kohm"}, {dim::capacitance, "3.3 uF"}, {dim::inductance, "150 uH"},
-                                   {dim::time, "5 s"}, {dim::frequency, "29 kHz"}, {dim::power, "0.25 W"}, {dim::energy, "0.2 J"}, {dim::charge, "45 uC"}, {dim::length, "2.4 mm"},
-                                   {dim::temperature, "35 degC"}, {dim::thermal_resistance, "62 K/W"}, {dim::melting_integral, "1.2 A2s"},
-                                   {dim::capacitance_per_length, "100 pF/m"}, {dim::none, "0.75"}};
+    static constexpr row rows[] = {{dim::voltage, "12 V"},
+                                   {dim::current, "20 mA"},
+                                   {dim::resistance, "4.7 kohm"},
+                                   {dim::capacitance, "3.3 uF"},
+                                   {dim::inductance, "150 uH"},
+                                   {dim::time, "5 s"},
+                                   {dim::frequency, "29 kHz"},
+                                   {dim::power, "0.25 W"},
+                                   {dim::energy, "0.2 J"},
+                                   {dim::charge, "45 uC"},
+                                   {dim::length, "2.4 mm"},
+                                   {dim::temperature, "35 degC"},
+                                   {dim::thermal_resistance, "62 K/W"},
+                                   {dim::melting_integral, "1.2 A2s"},
+                                   {dim::capacitance_per_length, "100 pF/m"},
+                                   {dim::none, "0.75"}};
     for (const row& r : rows) {
         if (r.dim == expected) {
             return name_of(expected) + " is due: write it like \"" + std::string(r.example) + "\"";

@@ -1,6 +1,6 @@
 #pragma once
-// The one checked conversion between run-time quantities and Boost.Units types. A typed quantity of another base than metre, kilogram, second, ampere and kelvin
-// (an angle, say) does not compile; a run-time quantity of the wrong dimension gives nothing. Not for public headers.
+// The one checked conversion between run-time quantities and Boost.Units types. A typed quantity of another base than metre, kilogram, second, ampere
+// and kelvin (an angle, say) does not compile; a run-time quantity of the wrong dimension gives nothing. Not for public headers.
 #include "quantity/quantity.hpp"
 
 #include <boost/units/quantity.hpp>

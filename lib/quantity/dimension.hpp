@@ -67,9 +67,9 @@ inline constexpr dimension inductance{{2, 1, -2, -2, 0}};
 inline constexpr dimension energy{{2, 1, -2, 0, 0}};
 inline constexpr dimension power{{2, 1, -3, 0, 0}};
 inline constexpr dimension pressure{{-1, 1, -2, 0, 0}};
-inline constexpr dimension melting_integral{{0, 0, 1, 2, 0}};             // A2s
-inline constexpr dimension thermal_resistance{{-2, -1, 3, 0, 1}};         // K/W
-inline constexpr dimension capacitance_per_length{{-3, -1, 4, 2, 0}};     // F/m
+inline constexpr dimension melting_integral{{0, 0, 1, 2, 0}};         // A2s
+inline constexpr dimension thermal_resistance{{-2, -1, 3, 0, 1}};     // K/W
+inline constexpr dimension capacitance_per_length{{-3, -1, 4, 2, 0}}; // F/m
 } // namespace dim
 
 /// The trade name of a dimension ("a voltage", "a resistance"), or its base units ("m2 kg s-3") where it has none.

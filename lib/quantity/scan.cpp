@@ -174,19 +174,32 @@ std::optional<double> take_code(cursor& c, const dimension& expected)
 std::optional<letter_tolerance> tolerance_letter(char mark)
 {
     switch (mark) {
-    case 'B': return letter_tolerance{-0.001, 0.001};
-    case 'C': return letter_tolerance{-0.0025, 0.0025};
-    case 'D': return letter_tolerance{-0.005, 0.005};
-    case 'F': return letter_tolerance{-0.01, 0.01};
-    case 'G': return letter_tolerance{-0.02, 0.02};
-    case 'J': return letter_tolerance{-0.05, 0.05};
-    case 'K': return letter_tolerance{-0.10, 0.10};
-    case 'M': return letter_tolerance{-0.20, 0.20};
-    case 'Q': return letter_tolerance{-0.10, 0.30};
-    case 'T': return letter_tolerance{-0.10, 0.50};
-    case 'S': return letter_tolerance{-0.20, 0.50};
-    case 'Z': return letter_tolerance{-0.20, 0.80};
-    default: return std::nullopt;
+    case 'B':
+        return letter_tolerance{-0.001, 0.001};
+    case 'C':
+        return letter_tolerance{-0.0025, 0.0025};
+    case 'D':
+        return letter_tolerance{-0.005, 0.005};
+    case 'F':
+        return letter_tolerance{-0.01, 0.01};
+    case 'G':
+        return letter_tolerance{-0.02, 0.02};
+    case 'J':
+        return letter_tolerance{-0.05, 0.05};
+    case 'K':
+        return letter_tolerance{-0.10, 0.10};
+    case 'M':
+        return letter_tolerance{-0.20, 0.20};
+    case 'Q':
+        return letter_tolerance{-0.10, 0.30};
+    case 'T':
+        return letter_tolerance{-0.10, 0.50};
+    case 'S':
+        return letter_tolerance{-0.20, 0.50};
+    case 'Z':
+        return letter_tolerance{-0.20, 0.80};
+    default:
+        return std::nullopt;
     }
 }
 

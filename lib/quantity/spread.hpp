@@ -22,7 +22,10 @@ struct range {
     bool bounded() const { return low > -unbounded && high < unbounded; }
 };
 
-constexpr range hull(const range& a, const range& b) { return {a.low < b.low ? a.low : b.low, a.high > b.high ? a.high : b.high}; }
+constexpr range hull(const range& a, const range& b)
+{
+    return {a.low < b.low ? a.low : b.low, a.high > b.high ? a.high : b.high};
+}
 
 struct spread {
     dimension dim{};

@@ -65,14 +65,16 @@ parsed<one_value> take_value(cursor& c, const dimension& expected, bool as_diffe
         if (expected == dim::none && value) {
             return one_value{*value};
         }
-        return value ? refuse(c, start, expected, "a bare number: " + scan::example_of(expected)) : error_at(c, start, "the number is too large to be meant");
+        return value ? refuse(c, start, expected, "a bare number: " + scan::example_of(expected))
+                     : error_at(c, start, "the number is too large to be meant");
     }
     const auto unit = find_unit(word);
     if (!unit) {
         return refuse(c, unit_at, expected, "no unit '" + std::string(word) + "': " + scan::example_of(expected));
     }
     if (unit->dim != expected) {
-        return refuse(c, start, expected, std::string(c.text.substr(start, c.at - start)) + " is " + name_of(unit->dim) + ": " + scan::example_of(expected));
+        return refuse(c, start, expected,
+                      std::string(c.text.substr(start, c.at - start)) + " is " + name_of(unit->dim) + ": " + scan::example_of(expected));
     }
     if (as_difference && unit->offset != 0.0) {
         return error_at(c, unit_at, "a tolerance on a temperature is written in K");
@@ -82,8 +84,9 @@ parsed<one_value> take_value(cursor& c, const dimension& expected, bool as_diffe
         return error_at(c, start, "the number is too large to be meant");
     }
     if (word == "mF" && std::abs(*value) >= 1.0) {
-        return error_at(c, start, "mF is the millifarad: " + std::string(c.text.substr(start, c.at - start)) + " is " + format_quantity({*value, expected}) +
-                                      "; for microfarads write uF, for farads write F");
+        return error_at(c, start,
+                        "mF is the millifarad: " + std::string(c.text.substr(start, c.at - start)) + " is " + format_quantity({*value, expected}) +
+                            "; for microfarads write uF, for farads write F");
     }
     return one_value{*value * unit->factor + unit->offset, unit->offset != 0.0};
 }

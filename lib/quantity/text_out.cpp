@@ -93,7 +93,7 @@ std::string exact_digits(double x, int exponent)
 {
     for (int digits = 1; digits <= 17; ++digits) {
         std::string text = fmt::format("{:.{}g}", x / std::pow(10.0, exponent), digits);
-        const auto back = parse_quantity(text + (exponent == 0 ? "" : "") , dim::none);
+        const auto back = parse_quantity(text + (exponent == 0 ? "" : ""), dim::none);
         const auto* q = std::get_if<quantity>(&back);
         if (q != nullptr && std::stod(text + (text.find('e') == std::string::npos ? "e" + std::to_string(exponent) : "")) == x &&
             text.find('e') == std::string::npos) {

@@ -8,15 +8,8 @@ namespace onehand {
 namespace {
 
 // Greek and technical code points that are written alike are read alike.
-constexpr std::array<std::pair<std::string_view, int>, 9> prefixes{{{"p", -12},
-                                                                       {"n", -9},
-                                                                       {"u", -6},
-                                                                       {"\u00b5", -6},
-                                                                       {"\u03bc", -6},
-                                                                       {"m", -3},
-                                                                       {"k", 3},
-                                                                       {"M", 6},
-                                                                       {"G", 9}}};
+constexpr std::array<std::pair<std::string_view, int>, 9> prefixes{
+    {{"p", -12}, {"n", -9}, {"u", -6}, {"\u00b5", -6}, {"\u03bc", -6}, {"m", -3}, {"k", 3}, {"M", 6}, {"G", 9}}};
 
 } // namespace
 

@@ -10,9 +10,9 @@
 namespace onehand {
 
 struct unit_row {
-    std::string_view word;    // as written
-    double factor = 1.0;      // to SI
-    double offset = 0.0;      // added after the factor (degC)
+    std::string_view word; // as written
+    double factor = 1.0;   // to SI
+    double offset = 0.0;   // added after the factor (degC)
     dimension dim{};
     bool prefixed = false;    // takes a prefix
     std::string_view printed; // the form that output uses; empty: this row is only read
@@ -21,7 +21,7 @@ struct unit_row {
 const std::vector<unit_row>& unit_rows();
 
 struct unit_match {
-    int exponent = 0;         // of ten, from the prefix: kept apart so that 0.18 kV and 180 V are the same number
+    int exponent = 0; // of ten, from the prefix: kept apart so that 0.18 kV and 180 V are the same number
     double factor = 1.0;
     double offset = 0.0;
     dimension dim{};

@@ -17,8 +17,9 @@ std::string unit_of(const dimension& d)
         dimension dim;
         const char* unit;
     };
-    static const row rows[] = {{dim::voltage, "V"}, {dim::current, "A"}, {dim::resistance, "ohm"}, {dim::capacitance, "F"}, {dim::inductance, "H"}, {dim::time, "s"},
-                               {dim::frequency, "Hz"}, {dim::power, "W"}, {dim::energy, "J"}, {dim::charge, "C"}, {dim::length, "m"}, {dim::temperature, "K"},
+    static const row rows[] = {{dim::voltage, "V"},    {dim::current, "A"}, {dim::resistance, "ohm"}, {dim::capacitance, "F"},
+                               {dim::inductance, "H"}, {dim::time, "s"},    {dim::frequency, "Hz"},   {dim::power, "W"},
+                               {dim::energy, "J"},     {dim::charge, "C"},  {dim::length, "m"},       {dim::temperature, "K"},
                                {dim::none, "1"}};
     for (const row& r : rows) {
         if (r.dim == d) {
@@ -107,7 +108,13 @@ json of_classes(const std::vector<class_told>& classes)
 
 json of_finding(const finding& f)
 {
-    json j{{"id", f.id}, {"rule", f.rule}, {"limit-set", f.limit_set}, {"subject", of_subject(f.about)}, {"state", word_for(f.in)}, {"change", f.change}, {"verdict", word_for(f.judged)}};
+    json j{{"id", f.id},
+           {"rule", f.rule},
+           {"limit-set", f.limit_set},
+           {"subject", of_subject(f.about)},
+           {"state", word_for(f.in)},
+           {"change", f.change},
+           {"verdict", word_for(f.judged)}};
     if (!f.marginal_by.empty()) {
         j["marginal-by"] = f.marginal_by;
     }
@@ -164,7 +171,8 @@ json of_counts(const audit_result& r)
 
 json of_discharge(const discharge_facts& d)
 {
-    json j{{"nets", d.nets}, {"input-end", d.input_end}, {"output-end", d.output_end}, {"change", d.change}, {"limits", json::array()}, {"left", json::array()}};
+    json j{{"nets", d.nets},     {"input-end", d.input_end}, {"output-end", d.output_end},
+           {"change", d.change}, {"limits", json::array()},  {"left", json::array()}};
     for (const auto& l : d.limits) {
         j["limits"].push_back({{"to", l.to.si}, {"time", of_value(l.time)}, {"limit-set", l.limit_set}, {"exempt", l.exempt}});
     }
@@ -252,14 +260,26 @@ void add_access_and_stored(json& j, const audit_result& r)
     j["access"] = json::array();
     for (const access_facts& a : r.accesses) {
         for (const auto& s : a.states) {
-            j["access"].push_back({{"nets", a.where.nets}, {"at", a.where.where}, {"when", a.where.when}, {"state", word_for(s.in)}, {"change", s.change},
-                                   {"voltage", of_value(s.voltage)}, {"current", of_value(s.current)}, {"charge", of_value(s.charge)}, {"class", of_classes(s.classes)}});
+            j["access"].push_back({{"nets", a.where.nets},
+                                   {"at", a.where.where},
+                                   {"when", a.where.when},
+                                   {"state", word_for(s.in)},
+                                   {"change", s.change},
+                                   {"voltage", of_value(s.voltage)},
+                                   {"current", of_value(s.current)},
+                                   {"charge", of_value(s.charge)},
+                                   {"class", of_classes(s.classes)}});
         }
     }
     j["stored"] = json::array();
     for (const stored_facts& s : r.stored) {
-        json one{{"name", s.about.name}, {"nets", s.about.nets}, {"parts", s.parts}, {"capacitance", of_value(s.capacitance)}, {"voltage", of_value(s.voltage)},
-                 {"energy", of_value(s.energy)}, {"charge", of_value(s.charge)}};
+        json one{{"name", s.about.name},
+                 {"nets", s.about.nets},
+                 {"parts", s.parts},
+                 {"capacitance", of_value(s.capacitance)},
+                 {"voltage", of_value(s.voltage)},
+                 {"energy", of_value(s.energy)},
+                 {"charge", of_value(s.charge)}};
         if (s.is_pair) {
             one["at-once"] = {{"energy", of_value(s.at_once_energy)}, {"charge", of_value(s.at_once_charge)}};
         }
@@ -275,7 +295,10 @@ void add_discharge(json& j, const audit_result& r)
         j["discharge"].push_back(of_discharge(d));
     }
     if (r.label) {
-        j["label"] = {{"voltage", of_value(r.label->voltage)}, {"energy", of_value(r.label->energy)}, {"wait", of_value(r.label->wait)}, {"reason", r.label->reason}};
+        j["label"] = {{"voltage", of_value(r.label->voltage)},
+                      {"energy", of_value(r.label->energy)},
+                      {"wait", of_value(r.label->wait)},
+                      {"reason", r.label->reason}};
     }
 }
 
@@ -305,7 +328,10 @@ json of_result(const audit_result& r, const std::string& section)
     j["left-out"] = r.left_out;
     j["loosened"] = r.loosened;
     j["first"] = r.concluded.first;
-    j["conclusion"] = {{"energise", r.concluded.energise}, {"reach-in", r.concluded.reach_in}, {"time-known", r.concluded.time_known}, {"because", r.concluded.because},
+    j["conclusion"] = {{"energise", r.concluded.energise},
+                       {"reach-in", r.concluded.reach_in},
+                       {"time-known", r.concluded.time_known},
+                       {"because", r.concluded.because},
                        {"conditions", r.concluded.conditions}};
     j["counts"] = of_counts(r);
     j["findings"] = json::array();
@@ -334,7 +360,8 @@ json of_complaint(const complaint& c)
 
 } // namespace
 
-std::string json_report(const std::vector<json_input>& outcomes, const std::string& version, const std::string& rules_stamp, const std::string& section)
+std::string json_report(const std::vector<json_input>& outcomes, const std::string& version, const std::string& rules_stamp,
+                        const std::string& section)
 {
     json j;
     j["format"] = 1;

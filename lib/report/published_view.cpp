@@ -66,8 +66,9 @@ std::string rule_whole(const library& lib, const rule_view& r)
     if (!r.advise.empty()) {
         out += item("  advise   ", r.advise + " (told, never judged)");
     }
-    out += item("  protects ", std::string(r.protects_person ? "a person: judged over the whole spread" : "a part: judged in use, marginal over its tolerances") + "; " +
-                                  word_for(r.signal) + "; bears on " + listed(r.bears_on));
+    out += item("  protects ",
+                std::string(r.protects_person ? "a person: judged over the whole spread" : "a part: judged in use, marginal over its tolerances") +
+                    "; " + word_for(r.signal) + "; bears on " + listed(r.bears_on));
     out += item("  why      ", r.why) + item("  change   ", r.remedy) + item("  set      ", r.limit_set) + seen_words(lib, r.from);
     for (const auto& e : r.examples) {
         std::string given;
@@ -83,7 +84,9 @@ std::string table_whole(const library& lib, const table& t)
 {
     std::string out = "table " + t.id + '\n' + item("  ", t.title);
     out += item("  holds    ", t.conditions);
-    const std::string how = t.between_rows == interpolation::linear ? "linear between rows" : t.between_rows == interpolation::step_up ? "the next row up" : "printed rows only";
+    const std::string how = t.between_rows == interpolation::linear    ? "linear between rows"
+                            : t.between_rows == interpolation::step_up ? "the next row up"
+                                                                       : "printed rows only";
     out += item("  between  ", how + (t.interpolation_source.empty() ? "" : ": " + t.interpolation_source));
     if (t.open_low || t.open_high) {
         out += item("  open     ", std::string(t.open_low ? "low " : "") + (t.open_high ? "high" : ""));
@@ -150,11 +153,16 @@ std::vector<std::string> all_ids(const library& lib, const std::vector<rule_view
 std::string type_words(const field_spec& f)
 {
     switch (f.holds) {
-    case field_spec::type::truth: return "true or false";
-    case field_spec::type::choice: return "one of: " + listed(f.choices);
-    case field_spec::type::text: return "text";
-    case field_spec::type::count: return "a whole number";
-    default: return name_of(f.dim);
+    case field_spec::type::truth:
+        return "true or false";
+    case field_spec::type::choice:
+        return "one of: " + listed(f.choices);
+    case field_spec::type::text:
+        return "text";
+    case field_spec::type::count:
+        return "a whole number";
+    default:
+        return name_of(f.dim);
     }
 }
 

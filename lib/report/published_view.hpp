@@ -1,5 +1,6 @@
 #pragma once
-// What `cite`, `rules` and `kinds` print: a rule in words with its figures, source, basis and examples; a table as printed; a source; the kinds of part with their fields.
+// What `cite`, `rules` and `kinds` print: a rule in words with its figures, source, basis and examples; a table as printed; a source; the kinds of
+// part with their fields.
 #include "rule/rules.hpp"
 
 namespace onehand {

@@ -109,12 +109,13 @@ private:
             text("  No hand goes inside on the strength of this description.", 2);
         } else {
             line("Reach in:  " + strong("ONLY AFTER", "1"));
-            text("  isolate the input; wait: " + (c.time_known ? waiting(r_) : std::string("no time can be told: measure")) + "; measure below 60 V on " + pairs() +
-                     "; short through a resistor and leave shorted.",
+            text("  isolate the input; wait: " + (c.time_known ? waiting(r_) : std::string("no time can be told: measure")) +
+                     "; measure below 60 V on " + pairs() + "; short through a resistor and leave shorted.",
                  2);
         }
         if (r_.label) {
-            text("Worst inside: " + greatest(r_.label->voltage) + ", " + greatest(r_.label->energy) + " stored. Waiting time: " + waiting(r_) + ".", 2);
+            text("Worst inside: " + greatest(r_.label->voltage) + ", " + greatest(r_.label->energy) + " stored. Waiting time: " + waiting(r_) + ".",
+                 2);
         }
         if (const finding* f = worst()) {
             item("Worst found: ", word_for(f->signal) + ", " + word_for(f->judged) + " - " + f->message);
@@ -170,8 +171,8 @@ private:
         for (const finding& f : r_.judged.findings) {
             ++counts[f.judged];
         }
-        title(fmt::format("Findings: {} fail, {} not-shown, {} marginal, {} pass, {} not-applicable", counts[verdict::fail], counts[verdict::not_shown],
-                          counts[verdict::marginal], counts[verdict::pass], counts[verdict::not_applicable]));
+        title(fmt::format("Findings: {} fail, {} not-shown, {} marginal, {} pass, {} not-applicable", counts[verdict::fail],
+                          counts[verdict::not_shown], counts[verdict::marginal], counts[verdict::pass], counts[verdict::not_applicable]));
         const finding* last = nullptr;
         for (const finding& f : r_.judged.findings) {
             const bool told = f.judged <= verdict::marginal || (o_.show_working && f.judged == verdict::pass);
@@ -287,7 +288,8 @@ private:
     void discharges()
     {
         title("After switch-off: last time above, and what is left, at its worst");
-        line("  " + padded("pair", 14) + padded("input", 9) + padded("output", 11) + padded("60 V", 10) + padded("1 s", 9) + padded("5 s", 9) + padded("10 s", 9) + "5 min");
+        line("  " + padded("pair", 14) + padded("input", 9) + padded("output", 11) + padded("60 V", 10) + padded("1 s", 9) + padded("5 s", 9) +
+             padded("10 s", 9) + "5 min");
         for (const discharge_facts& d : r_.discharges) {
             std::string row = "  " + padded(d.nets[0] + " to " + d.nets[1], 14) + padded(d.input_end, 9) + padded(d.output_end, 11);
             row += padded(d.limits.empty() ? "-" : greatest(d.limits.front().time, 3), 10);
@@ -341,7 +343,8 @@ private:
             return;
         }
         title("Spacings above 60 V, highest first");
-        line("  " + padded("pair", 16) + padded("voltage", 10) + padded("creepage asked", 15) + padded("measured", 13) + padded("clearance asked", 16) + "measured");
+        line("  " + padded("pair", 16) + padded("voltage", 10) + padded("creepage asked", 15) + padded("measured", 13) +
+             padded("clearance asked", 16) + "measured");
         std::size_t shown = 0;
         for (const spacing_facts& s : r_.spacings) {
             if (!o_.show_working && shown >= 12 && s.covered != "none") {

@@ -107,7 +107,9 @@ std::string source_words(const library* lib, const citation& c)
 {
     const source* s = lib == nullptr ? nullptr : lib->find_source(c.cite);
     const std::string title = s == nullptr ? c.cite : s->title.substr(0, s->title.find(','));
-    const std::string basis = c.rests_on == basis::confirmed ? "confirmed" : c.rests_on == basis::memory ? "from memory, not seen" : "common practice, no source";
+    const std::string basis = c.rests_on == basis::confirmed ? "confirmed"
+                              : c.rests_on == basis::memory  ? "from memory, not seen"
+                                                             : "common practice, no source";
     return title + ", " + c.clause + " [" + basis + "]";
 }
 

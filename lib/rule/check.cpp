@@ -13,7 +13,9 @@ using type = value::type;
 
 type type_of(const field_spec& f)
 {
-    return f.holds == field_spec::type::truth ? type::truth : f.holds == field_spec::type::quantity || f.holds == field_spec::type::count ? type::number : type::choice;
+    return f.holds == field_spec::type::truth                                            ? type::truth
+           : f.holds == field_spec::type::quantity || f.holds == field_spec::type::count ? type::number
+                                                                                         : type::choice;
 }
 
 std::string word_of(const expression& e)
@@ -42,24 +44,46 @@ public:
             e.solved |= p.solved;
         }
         switch (e.is) {
-        case op::constant: e.dim = e.constant.dim; return true;
-        case op::choice: e.type = type::choice; return true;
-        case op::name: return check_name(e);
-        case op::negate: e.dim = e.parts[0].dim; return numbers(e);
+        case op::constant:
+            e.dim = e.constant.dim;
+            return true;
+        case op::choice:
+            e.type = type::choice;
+            return true;
+        case op::name:
+            return check_name(e);
+        case op::negate:
+            e.dim = e.parts[0].dim;
+            return numbers(e);
         case op::add:
-        case op::subtract: e.dim = e.parts[0].dim; return numbers(e) && alike(e);
-        case op::multiply: e.dim = e.parts[0].dim * e.parts[1].dim; return numbers(e) && no_square(e);
-        case op::divide: e.dim = e.parts[0].dim / e.parts[1].dim; return numbers(e);
-        case op::power: e.dim = power(e.parts[0].dim, static_cast<int>(e.parts[1].constant.si)); return numbers(e);
+        case op::subtract:
+            e.dim = e.parts[0].dim;
+            return numbers(e) && alike(e);
+        case op::multiply:
+            e.dim = e.parts[0].dim * e.parts[1].dim;
+            return numbers(e) && no_square(e);
+        case op::divide:
+            e.dim = e.parts[0].dim / e.parts[1].dim;
+            return numbers(e);
+        case op::power:
+            e.dim = power(e.parts[0].dim, static_cast<int>(e.parts[1].constant.si));
+            return numbers(e);
         case op::less:
         case op::less_equal:
         case op::greater:
-        case op::greater_equal: e.type = type::truth; return numbers(e) && alike(e) && one_solved(e);
-        case op::equal: e.type = type::truth; return check_equal(e);
+        case op::greater_equal:
+            e.type = type::truth;
+            return numbers(e) && alike(e) && one_solved(e);
+        case op::equal:
+            e.type = type::truth;
+            return check_equal(e);
         case op::logic_and:
         case op::logic_or:
-        case op::logic_not: e.type = type::truth; return truths(e);
-        case op::call: return check_call(e);
+        case op::logic_not:
+            e.type = type::truth;
+            return truths(e);
+        case op::call:
+            return check_call(e);
         }
         return false;
     }
@@ -116,7 +140,8 @@ private:
 
     bool no_square(const expression& e)
     {
-        return print(e.parts[0]) != print(e.parts[1]) || e.parts[0].is == op::constant || fail(e, "a square is written x ^ 2, so that its spread is right");
+        return print(e.parts[0]) != print(e.parts[1]) || e.parts[0].is == op::constant ||
+               fail(e, "a square is written x ^ 2, so that its spread is right");
     }
 
     static void solved_names(const expression& e, std::set<std::string>& names)
@@ -148,7 +173,8 @@ private:
         std::set<std::string> solved;
         solved_names(e, solved);
         if (solved.size() > 1) {
-            return fail(e, "two solved facts in one comparison, " + *solved.begin() + " and " + *std::next(solved.begin()) + ": they move together, a fact of their own is needed");
+            return fail(e, "two solved facts in one comparison, " + *solved.begin() + " and " + *std::next(solved.begin()) +
+                               ": they move together, a fact of their own is needed");
         }
         std::set<std::string> names;
         all_names(e, names);
@@ -180,7 +206,8 @@ private:
             const auto spec = name_of_subject(lib_, subject_, name->word);
             if (spec && !spec->choices.empty() && std::find(spec->choices.begin(), spec->choices.end(), choice->word) == spec->choices.end()) {
                 const std::string near = nearest_name(choice->word, spec->choices);
-                return fail(*choice, "'" + name->word + "' is never \"" + choice->word + "\"" + (near.empty() ? "" : "; nearest known name: " + near));
+                return fail(*choice,
+                            "'" + name->word + "' is never \"" + choice->word + "\"" + (near.empty() ? "" : "; nearest known name: " + near));
             }
         }
         return true;
@@ -233,7 +260,8 @@ private:
             return fail(e, "table '" + t->id + "' has no column '" + e.column + "'");
         }
         if (t->by_choice || e.parts[1].dim != t->axis_dim) {
-            return fail(e.parts[1], "the axis of '" + t->id + "' is " + (t->by_choice ? "a choice" : name_of(t->axis_dim)) + ", not " + word_of(e.parts[1]));
+            return fail(e.parts[1],
+                        "the axis of '" + t->id + "' is " + (t->by_choice ? "a choice" : name_of(t->axis_dim)) + ", not " + word_of(e.parts[1]));
         }
         e.dim = column->dim;
         return true;
@@ -281,7 +309,8 @@ std::optional<name_spec> name_of_subject(const library& lib, const std::string& 
     return found;
 }
 
-bool check_expression(expression& e, const library& lib, const std::string& subject, const expression_place& where, std::vector<complaint>& complaints)
+bool check_expression(expression& e, const library& lib, const std::string& subject, const expression_place& where,
+                      std::vector<complaint>& complaints)
 {
     return checker(lib, subject, where, complaints).check(e);
 }

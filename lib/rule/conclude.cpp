@@ -26,8 +26,8 @@ bool after_fault(const finding& f)
 bool only_time_missing(const finding& f)
 {
     return f.judged == verdict::not_shown && !f.missing.empty() && std::all_of(f.missing.begin(), f.missing.end(), [](const std::string& name) {
-               return name.find("capacitance") != std::string::npos || name.find(".value") != std::string::npos || name.find("discharge") != std::string::npos ||
-                      name.find("bleeder") != std::string::npos || name.find("capacitors") != std::string::npos || name.find("switch-off") != std::string::npos;
+               return name.find("capacitance") != std::string::npos || name.find("\"capacitors\"") != std::string::npos ||
+                      name.find("after switch-off") != std::string::npos;
            });
 }
 

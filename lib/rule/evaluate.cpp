@@ -164,7 +164,9 @@ value of_call(const expression& e, const surroundings& s)
         return each(a, e.dim, [](const range& x) { return range{std::sqrt(std::max(x.low, 0.0)), std::sqrt(std::max(x.high, 0.0))}; });
     }
     if (e.word == "ln") {
-        return each(a, e.dim, [](const range& x) { return range{x.low > 0.0 ? std::log(x.low) : -unbounded, x.high > 0.0 ? std::log(x.high) : -unbounded}; });
+        return each(a, e.dim, [](const range& x) {
+            return range{x.low > 0.0 ? std::log(x.low) : -unbounded, x.high > 0.0 ? std::log(x.high) : -unbounded};
+        });
     }
     return each(a, e.dim, [](const range& x) { return range{std::exp(x.low), std::exp(x.high)}; });
 }
@@ -177,10 +179,14 @@ value of_number(const expression& e, const surroundings& s)
     }
     const value b = evaluate(e.parts[1], s);
     switch (e.is) {
-    case op::add: return combine(a, b, e.dim, add);
-    case op::subtract: return combine(a, b, e.dim, [](const range& x, const range& y) { return add(x, negate(y)); });
-    case op::multiply: return combine(a, b, e.dim, multiply);
-    case op::divide: return combine(a, b, e.dim, divide);
+    case op::add:
+        return combine(a, b, e.dim, add);
+    case op::subtract:
+        return combine(a, b, e.dim, [](const range& x, const range& y) { return add(x, negate(y)); });
+    case op::multiply:
+        return combine(a, b, e.dim, multiply);
+    case op::divide:
+        return combine(a, b, e.dim, divide);
     default: {
         const int n = static_cast<int>(e.parts[1].constant.si);
         return each(a, e.dim, [n](const range& x) { return raised(x, n); });
@@ -221,14 +227,18 @@ compared same(const range& a, const range& b)
 compared compare(op is, const range& a, const range& b)
 {
     switch (is) {
-    case op::less: return below(a, b, true);
-    case op::less_equal: return below(a, b, false);
-    case op::greater: return below(b, a, true);
-    case op::greater_equal: return below(b, a, false);
-    default: return same(a, b);
+    case op::less:
+        return below(a, b, true);
+    case op::less_equal:
+        return below(a, b, false);
+    case op::greater:
+        return below(b, a, true);
+    case op::greater_equal:
+        return below(b, a, false);
+    default:
+        return same(a, b);
     }
 }
-
 
 /// A time that never comes is longer than anything.
 truth_outcome of_never(const expression& e, const value& a, const value& b)
@@ -354,17 +364,23 @@ tri turned(tri a)
 value evaluate(const expression& e, const surroundings& s)
 {
     switch (e.is) {
-    case op::constant: return number(exactly(e.constant));
-    case op::choice: return choice_of(e.word);
-    case op::name: return of_name(e, s);
-    case op::call: return of_call(e, s);
+    case op::constant:
+        return number(exactly(e.constant));
+    case op::choice:
+        return choice_of(e.word);
+    case op::name:
+        return of_name(e, s);
+    case op::call:
+        return of_call(e, s);
     case op::negate:
     case op::add:
     case op::subtract:
     case op::multiply:
     case op::divide:
-    case op::power: return of_number(e, s);
-    default: break;
+    case op::power:
+        return of_number(e, s);
+    default:
+        break;
     }
     const truth_outcome t = judge_truth(e, s);
     value v;
@@ -383,10 +399,14 @@ truth_outcome judge_truth(const expression& e, const surroundings& s)
     case op::less:
     case op::less_equal:
     case op::greater:
-    case op::greater_equal: return of_comparison(e, s);
-    case op::equal: return e.parts[0].type == type::number ? of_comparison(e, s) : of_choice_equality(e, s);
-    case op::logic_and: return join(judge_truth(e.parts[0], s), judge_truth(e.parts[1], s), true);
-    case op::logic_or: return join(judge_truth(e.parts[0], s), judge_truth(e.parts[1], s), false);
+    case op::greater_equal:
+        return of_comparison(e, s);
+    case op::equal:
+        return e.parts[0].type == type::number ? of_comparison(e, s) : of_choice_equality(e, s);
+    case op::logic_and:
+        return join(judge_truth(e.parts[0], s), judge_truth(e.parts[1], s), true);
+    case op::logic_or:
+        return join(judge_truth(e.parts[0], s), judge_truth(e.parts[1], s), false);
     case op::logic_not: {
         truth_outcome t = judge_truth(e.parts[0], s);
         const truth_outcome was = t;
@@ -397,7 +417,8 @@ truth_outcome judge_truth(const expression& e, const surroundings& s)
         t.breached_in_use = was.in_use != tri::no;
         return t;
     }
-    default: break;
+    default:
+        break;
     }
     const value v = evaluate(e, s);
     truth_outcome t;

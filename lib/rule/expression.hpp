@@ -1,6 +1,7 @@
 #pragma once
-// The rule language: parsed, dimension-checked, evaluated three-valued over both ranges of every figure. Operators + - * / ^ < <= > >= = and or not, functions min max abs sqrt
-// ln exp, table("id", "column", x), time-to(60 V). Names carry hyphens, so minus needs blanks. Every mistake has its column. Inside the room only.
+// The rule language: parsed, dimension-checked, evaluated three-valued over both ranges of every figure. Operators + - * / ^ < <= > >= = and or not,
+// functions min max abs sqrt ln exp, table("id", "column", x), time-to(60 V). Names carry hyphens, so minus needs blanks. Every mistake has its
+// column. Inside the room only.
 #include "published/library.hpp"
 #include "stress/facts.hpp"
 
@@ -18,14 +19,33 @@ struct expression_place {
 };
 
 struct expression {
-    enum class op { constant, name, choice, negate, add, subtract, multiply, divide, power, less, less_equal, greater, greater_equal, equal, logic_and, logic_or, logic_not, call };
+    enum class op {
+        constant,
+        name,
+        choice,
+        negate,
+        add,
+        subtract,
+        multiply,
+        divide,
+        power,
+        less,
+        less_equal,
+        greater,
+        greater_equal,
+        equal,
+        logic_and,
+        logic_or,
+        logic_not,
+        call
+    };
     op is = op::constant;
-    quantity constant;         // constant
-    std::string word;          // name, choice text, function, table id
-    std::string column;        // table
+    quantity constant;          // constant
+    std::string word;           // name, choice text, function, table id
+    std::string column;         // table
     std::optional<state> other; // name of another state
     std::vector<expression> parts;
-    std::size_t offset = 0;    // in code points
+    std::size_t offset = 0; // in code points
     // Filled in by the check:
     value::type type = value::type::number;
     dimension dim{};
@@ -49,10 +69,12 @@ struct name_spec {
 using name_lookup = std::optional<name_spec> (*)(const library& lib, const std::string& subject, const std::string& name);
 
 /// Checks names, dimensions and types in place; false with complaints if it does not hold.
-bool check_expression(expression& e, const library& lib, const std::string& subject, const expression_place& where, std::vector<complaint>& complaints);
+bool check_expression(expression& e, const library& lib, const std::string& subject, const expression_place& where,
+                      std::vector<complaint>& complaints);
 
 /// The spec of a field, fact or class of a subject; nothing if there is none. `known`, if given, is filled with all names there are.
-std::optional<name_spec> name_of_subject(const library& lib, const std::string& subject, const std::string& name, std::vector<std::string>* known = nullptr);
+std::optional<name_spec> name_of_subject(const library& lib, const std::string& subject, const std::string& name,
+                                         std::vector<std::string>* known = nullptr);
 
 /// Three-valued truth over one of the two ranges.
 enum class tri { no, unknown, yes };
@@ -74,9 +96,9 @@ value evaluate(const expression& e, const surroundings& s);
 
 /// Outcome of a truth expression over in-use and whole ranges, with what is missing or assumed.
 struct truth_outcome {
-    tri in_use = tri::unknown;  // true throughout, false throughout, or neither
+    tri in_use = tri::unknown; // true throughout, false throughout, or neither
     tri whole = tri::unknown;
-    bool certain_fail = false;  // false for every possibility, whatever is missing
+    bool certain_fail = false;    // false for every possibility, whatever is missing
     bool breached_in_use = false; // some known point in use is false
     bool breached = false;        // some known point of the whole is false
     std::vector<std::string> missing;

@@ -135,11 +135,16 @@ std::optional<double> margin_of(const expression& e, const value& left, const va
 std::string sign_word(op is)
 {
     switch (is) {
-    case op::less: return "<";
-    case op::less_equal: return "<=";
-    case op::greater: return ">";
-    case op::greater_equal: return ">=";
-    default: return "=";
+    case op::less:
+        return "<";
+    case op::less_equal:
+        return "<=";
+    case op::greater:
+        return ">";
+    case op::greater_equal:
+        return ">=";
+    default:
+        return "=";
     }
 }
 
@@ -213,8 +218,8 @@ std::map<std::string, std::string> classes_of(const rule_set& set, const library
     return names;
 }
 
-finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts, const std::map<std::string, std::string>& classes,
-                  const std::string& derating)
+finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts,
+                  const std::map<std::string, std::string>& classes, const std::string& derating)
 {
     const surroundings s{&lib, &facts, &about, in, &classes};
     finding f;
@@ -285,7 +290,8 @@ namespace {
 
 bool in_force(const rule& r, const judging_options& options)
 {
-    return r.shown.limit_set == "practice" || std::find(options.limit_sets.begin(), options.limit_sets.end(), r.shown.limit_set) != options.limit_sets.end();
+    return r.shown.limit_set == "practice" ||
+           std::find(options.limit_sets.begin(), options.limit_sets.end(), r.shown.limit_set) != options.limit_sets.end();
 }
 
 bool graver(const finding& a, const finding& b)
@@ -355,10 +361,11 @@ void find_loosened(const rule_set& rules, std::vector<finding>& findings, std::v
             if (f.rule != r.names) {
                 continue;
             }
-            const auto own = std::find_if(findings.begin(), findings.end(), [&](const finding& o) { return o.rule == r.shown.id && o.about == f.about; });
+            const auto own =
+                std::find_if(findings.begin(), findings.end(), [&](const finding& o) { return o.rule == r.shown.id && o.about == f.about; });
             if (own != findings.end() && own->judged > f.judged) {
-                const std::string line = "shop rule " + r.shown.id + " is milder than " + r.names + " on " + f.about.name + ": " + word_for(own->judged) + " against " +
-                                         word_for(f.judged) + "; the published rule counts";
+                const std::string line = "shop rule " + r.shown.id + " is milder than " + r.names + " on " + f.about.name + ": " +
+                                         word_for(own->judged) + " against " + word_for(f.judged) + "; the published rule counts";
                 if (std::find(loosened.begin(), loosened.end(), line) == loosened.end()) {
                     loosened.push_back(line);
                 }
@@ -369,8 +376,8 @@ void find_loosened(const rule_set& rules, std::vector<finding>& findings, std::v
 
 } // namespace
 
-judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts, const judging_options& options,
-                const std::string& changed, const std::string& change_kind)
+judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts,
+                const judging_options& options, const std::string& changed, const std::string& change_kind)
 {
     judgement out;
     std::map<std::tuple<std::string, std::string, state>, std::map<std::string, std::string>> classes;

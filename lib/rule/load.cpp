@@ -9,8 +9,8 @@ namespace onehand {
 namespace {
 
 const std::vector<std::string> subject_words{"gap", "net-pair", "stored", "access", "converter", "supply"};
-const std::vector<std::string> keys{"title", "subject", "states", "changes", "protects", "bears-on", "signal", "when", "require", "advise", "message", "why", "remedy",
-                                    "settles", "source", "example", "gather", "names", "at-worst"};
+const std::vector<std::string> keys{"title",   "subject", "states", "changes", "protects", "bears-on", "signal", "when",  "require", "advise",
+                                    "message", "why",     "remedy", "settles", "source",   "example",  "gather", "names", "at-worst"};
 
 std::string stem(const std::string& file)
 {

@@ -26,7 +26,10 @@ bool digit(char c)
 /// Recursive descent; one expression, to the end of the text.
 class parser {
 public:
-    parser(const std::string& text, const expression_place& where, std::vector<complaint>& complaints) : text_(text), where_(where), complaints_(complaints) {}
+    parser(const std::string& text, const expression_place& where, std::vector<complaint>& complaints)
+        : text_(text), where_(where), complaints_(complaints)
+    {
+    }
 
     std::optional<expression> run()
     {
@@ -143,7 +146,8 @@ private:
         auto a = sum();
         blanks();
         const std::size_t from = at_;
-        static const std::pair<const char*, op> signs[] = {{"<=", op::less_equal}, {">=", op::greater_equal}, {"<", op::less}, {">", op::greater}, {"=", op::equal}};
+        static const std::pair<const char*, op> signs[] = {
+            {"<=", op::less_equal}, {">=", op::greater_equal}, {"<", op::less}, {">", op::greater}, {"=", op::equal}};
         for (const auto& [sign, is] : signs) {
             if (a && take(sign)) {
                 auto b = sum();
@@ -319,7 +323,8 @@ private:
     std::string word_here()
     {
         const std::size_t from = at_;
-        while (at_ < text_.size() && (letter(text_[at_]) || digit(text_[at_]) || (text_[at_] == '-' && at_ + 1 < text_.size() && (letter(text_[at_ + 1]) || digit(text_[at_ + 1]))))) {
+        while (at_ < text_.size() && (letter(text_[at_]) || digit(text_[at_]) ||
+                                      (text_[at_] == '-' && at_ + 1 < text_.size() && (letter(text_[at_ + 1]) || digit(text_[at_ + 1]))))) {
             ++at_;
         }
         return text_.substr(from, at_ - from);
@@ -352,7 +357,8 @@ private:
 
     std::optional<expression> call(expression e, std::size_t from)
     {
-        static const std::pair<const char*, std::size_t> functions[] = {{"min", 2}, {"max", 2}, {"abs", 1}, {"sqrt", 1}, {"ln", 1}, {"exp", 1}, {"time-to", 1}, {"table", 3}};
+        static const std::pair<const char*, std::size_t> functions[] = {{"min", 2}, {"max", 2}, {"abs", 1},     {"sqrt", 1},
+                                                                        {"ln", 1},  {"exp", 1}, {"time-to", 1}, {"table", 3}};
         std::size_t count = 0;
         for (const auto& [known, arguments] : functions) {
             count = e.word == known ? arguments : count;
@@ -412,19 +418,32 @@ private:
 const char* sign_of(op is)
 {
     switch (is) {
-    case op::add: return "+";
-    case op::subtract: return "-";
-    case op::multiply: return "*";
-    case op::divide: return "/";
-    case op::power: return "^";
-    case op::less: return "<";
-    case op::less_equal: return "<=";
-    case op::greater: return ">";
-    case op::greater_equal: return ">=";
-    case op::equal: return "=";
-    case op::logic_and: return "and";
-    case op::logic_or: return "or";
-    default: return "?";
+    case op::add:
+        return "+";
+    case op::subtract:
+        return "-";
+    case op::multiply:
+        return "*";
+    case op::divide:
+        return "/";
+    case op::power:
+        return "^";
+    case op::less:
+        return "<";
+    case op::less_equal:
+        return "<=";
+    case op::greater:
+        return ">";
+    case op::greater_equal:
+        return ">=";
+    case op::equal:
+        return "=";
+    case op::logic_and:
+        return "and";
+    case op::logic_or:
+        return "or";
+    default:
+        return "?";
     }
 }
 
@@ -447,11 +466,16 @@ std::optional<expression> parse_expression(const std::string& text, const expres
 std::string print(const expression& e)
 {
     switch (e.is) {
-    case op::constant: return format_quantity(e.constant);
-    case op::choice: return "\"" + e.word + "\"";
-    case op::name: return (e.other ? word_for(*e.other) + "." : "") + e.word;
-    case op::negate: return "-" + print(e.parts[0]);
-    case op::logic_not: return "not " + print(e.parts[0]);
+    case op::constant:
+        return format_quantity(e.constant);
+    case op::choice:
+        return "\"" + e.word + "\"";
+    case op::name:
+        return (e.other ? word_for(*e.other) + "." : "") + e.word;
+    case op::negate:
+        return "-" + print(e.parts[0]);
+    case op::logic_not:
+        return "not " + print(e.parts[0]);
     case op::call: {
         std::string inside = e.word == "table" ? print(e.parts[0]) + ", \"" + e.column + "\"" : "";
         for (std::size_t i = e.word == "table" ? 1 : 0; i < e.parts.size(); ++i) {
@@ -459,7 +483,8 @@ std::string print(const expression& e)
         }
         return e.word + "(" + inside + ")";
     }
-    default: return "(" + print(e.parts[0]) + " " + sign_of(e.is) + " " + print(e.parts[1]) + ")";
+    default:
+        return "(" + print(e.parts[0]) + " " + sign_of(e.is) + " " + print(e.parts[1]) + ")";
     }
 }
 

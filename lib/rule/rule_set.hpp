@@ -19,8 +19,8 @@ struct rule {
     std::vector<std::string> changes{"none"};
     std::optional<expression> when, require, advise;
     std::vector<rule_example> examples;
-    std::string names;         // a shop rule: the published rule it stands beside
-    std::string settles;       // the measurement or datum that settles a marginal or a not-shown; empty: told from what is missing
+    std::string names;   // a shop rule: the published rule it stands beside
+    std::string settles; // the measurement or datum that settles a marginal or a not-shown; empty: told from what is missing
     bool gather = false;
     verdict at_worst = verdict::fail; // a breach is told as no more than this: what would make it a failure is judged by another rule
 };
@@ -32,7 +32,7 @@ struct compiled_class {
 };
 
 struct rule_set {
-    std::vector<rule> rules;           // by id
+    std::vector<rule> rules; // by id
     std::vector<compiled_class> classes;
 };
 
@@ -41,7 +41,7 @@ std::map<std::string, std::string> classes_of(const rule_set& set, const library
                                               std::vector<class_told>* told);
 
 /// One rule on one subject in one state.
-finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts, const std::map<std::string, std::string>& classes,
-                  const std::string& derating);
+finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts,
+                  const std::map<std::string, std::string>& classes, const std::string& derating);
 
 } // namespace onehand

@@ -31,13 +31,14 @@ struct class_told {
 };
 
 struct judgement {
-    std::vector<finding> findings;   // ordered by verdict, signal, rule, natural order of reference
+    std::vector<finding> findings; // ordered by verdict, signal, rule, natural order of reference
     std::vector<class_told> classes;
     std::vector<std::string> loosened; // shop rules milder than the published one they name
 };
-/// `changed` names the change under which the facts hold ("none" as built): only rules for such changes are judged. `changes_kind` is "none", "single-fault", "input-event", "unplugged".
-judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts, const judging_options& options,
-                const std::string& changed = "none", const std::string& change_kind = "none");
+/// `changed` names the change under which the facts hold ("none" as built): only rules for such changes are judged. `changes_kind` is "none",
+/// "single-fault", "input-event", "unplugged".
+judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts,
+                const judging_options& options, const std::string& changed = "none", const std::string& change_kind = "none");
 
 /// Design section 3. `unattested` are the lines for what the description does not attest as complete.
 conclusions conclude(const std::vector<finding>& findings, bool waiting_time_known);

@@ -169,14 +169,10 @@ value solved_supply::stored_fact(const subject& s, const std::string& name) cons
     if (name == "paths") {
         return choice_of(i->paths);
     }
-    const std::pair<const char*, const value*> figures[] = {{"voltage", &i->voltage},
-                                                            {"capacitance", &i->capacitance},
-                                                            {"energy", &i->energy},
-                                                            {"charge", &i->charge},
-                                                            {"at-once-energy", &i->at_once_energy},
-                                                            {"at-once-charge", &i->at_once_charge},
-                                                            {"es1-voltage", &i->es1_voltage},
-                                                            {"es2-voltage", &i->es2_voltage}};
+    const std::pair<const char*, const value*> figures[] = {
+        {"voltage", &i->voltage},         {"capacitance", &i->capacitance},       {"energy", &i->energy},
+        {"charge", &i->charge},           {"at-once-energy", &i->at_once_energy}, {"at-once-charge", &i->at_once_charge},
+        {"es1-voltage", &i->es1_voltage}, {"es2-voltage", &i->es2_voltage}};
     for (const auto& [word, figure] : figures) {
         if (name == word) {
             return *figure;
@@ -235,8 +231,9 @@ value solved_supply::converter_fact(const std::string& name) const
         return choice_of(output_.topology);
     }
     if (name == "isolates") {
-        return output_.topology == "boost" || output_.topology == "boost-multiplier" ? truth_of(false)
-                                                                                    : missing_value(value::type::truth, {"whether the converter isolates"});
+        return output_.topology == "boost" || output_.topology == "boost-multiplier"
+                   ? truth_of(false)
+                   : missing_value(value::type::truth, {"whether the converter isolates"});
     }
     return missing_value(value::type::number, {"converter." + name});
 }

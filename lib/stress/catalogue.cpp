@@ -35,7 +35,8 @@ void add_parts(std::vector<fact_spec>& list)
     list.push_back(solved("mosfet", "peak-voltage", dim::voltage, "drain to source at its highest, the spike included"));
     list.push_back(solved("diode", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
     list.push_back(solved("zener", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
-    list.push_back(solved("capacitor", "reverse-voltage", dim::voltage, "how far its marked negative stands above its marked positive; 0 V if never"));
+    list.push_back(
+        solved("capacitor", "reverse-voltage", dim::voltage, "how far its marked negative stands above its marked positive; 0 V if never"));
     list.push_back(truth("capacitor", "polarised", "written with positive and negative"));
     list.push_back(truth("capacitor", "electrolytic", "its dielectric is an electrolyte: over voltage or reversed it can burst"));
     list.push_back(solved("trimmer", "track-current", dim::current, "the greater of the two sections' currents, wiper anywhere in its travel"));
@@ -50,7 +51,8 @@ void add_gaps(std::vector<fact_spec>& list)
     }
     list.push_back(told("gap", "clearance", dim::length, "measured distance through air"));
     list.push_back(told("gap", "creepage", dim::length, "measured distance along the surface"));
-    list.push_back(told("gap", "required-creepage", dim::length, "IEC 60664-1 creepage at the working voltage, pollution degree and material; twice for reinforced"));
+    list.push_back(told("gap", "required-creepage", dim::length,
+                        "IEC 60664-1 creepage at the working voltage, pollution degree and material; twice for reinforced"));
     list.push_back(told("gap", "required-clearance", dim::length, "IEC 60664-1 steady-state clearance, least by pollution degree, altitude counted"));
     list.push_back(choice("gap", "insulation", "as written, or by law", {"functional", "basic", "supplementary", "reinforced"}));
     list.push_back(truth("gap", "bridge-worse", "bridging the gap puts hazardous voltage on something that can be touched, or raises a class"));

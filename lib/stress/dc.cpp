@@ -12,7 +12,8 @@ using form = element_spec::form;
 
 bool held_by_feedback(const supply& s, const rail& output, state in)
 {
-    return in != state::standby && output.basis.starts_with("held by") && !output.feedback_lost && !output.output.numbers.empty() && s.stage.has_value();
+    return in != state::standby && output.basis.starts_with("held by") && !output.feedback_lost && !output.output.numbers.empty() &&
+           s.stage.has_value();
 }
 
 /// Both solutions of one state and the tables that turn them into values.
@@ -20,7 +21,8 @@ class dc_reader {
 public:
     dc_reader(const supply& s, const library& lib, const rail& output, state in)
         : s_(s), rail_(output), whole_(build_network(s, lib, output, in, over::whole, held_by_feedback(s, output, in))),
-          use_(build_network(s, lib, output, in, over::in_use, held_by_feedback(s, output, in))), at_whole_(circuit::solve(whole_.net)), at_use_(circuit::solve(use_.net))
+          use_(build_network(s, lib, output, in, over::in_use, held_by_feedback(s, output, in))), at_whole_(circuit::solve(whole_.net)),
+          at_use_(circuit::solve(use_.net))
     {
         out_.in = in;
         find_islands();

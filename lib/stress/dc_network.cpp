@@ -183,11 +183,18 @@ private:
         const bool known = valued && !found->second.numbers.empty();
         switch (f) {
         case form::closed:
-        case form::inductance: return {circuit::form::closed, {}};
-        case form::resistance: return {circuit::form::resistance, known ? box_of(found->second, which_) : circuit::box{0.0, unbounded}};
-        case form::clamp: return known && found->second.numbers.front().whole.bounded() ? circuit::option{circuit::form::clamp, box_of(found->second, which_)} : circuit::option{};
-        case form::current: return known && found->second.numbers.front().whole.bounded() ? circuit::option{circuit::form::current, box_of(found->second, which_)} : circuit::option{};
-        default: return {};
+        case form::inductance:
+            return {circuit::form::closed, {}};
+        case form::resistance:
+            return {circuit::form::resistance, known ? box_of(found->second, which_) : circuit::box{0.0, unbounded}};
+        case form::clamp:
+            return known && found->second.numbers.front().whole.bounded() ? circuit::option{circuit::form::clamp, box_of(found->second, which_)}
+                                                                          : circuit::option{};
+        case form::current:
+            return known && found->second.numbers.front().whole.bounded() ? circuit::option{circuit::form::current, box_of(found->second, which_)}
+                                                                          : circuit::option{};
+        default:
+            return {};
         }
     }
 

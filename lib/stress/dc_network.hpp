@@ -11,13 +11,13 @@ enum class over { in_use, whole };
 struct dc_network {
     circuit::network net;
     std::map<std::string, int> node;
-    std::vector<element> elements;                 // those that became branches, in order
-    std::vector<int> branch_of;                    // per element; -1: a track
-    std::vector<int> track_of;                     // per element; -1: a branch
+    std::vector<element> elements;                   // those that became branches, in order
+    std::vector<int> branch_of;                      // per element; -1: a track
+    std::vector<int> track_of;                       // per element; -1: a branch
     std::map<int, std::vector<std::string>> missing; // per node: what is not known of the elements that touch it
-    std::vector<std::string> source_names;         // per source of the network
-    std::set<std::string> assumed_nets;            // nets held by an assumption
-    std::vector<std::string> unheld;               // what could not be held: its name
+    std::vector<std::string> source_names;           // per source of the network
+    std::set<std::string> assumed_nets;              // nets held by an assumption
+    std::vector<std::string> unheld;                 // what could not be held: its name
 };
 
 circuit::box box_of(const spread& s, over which);

@@ -72,11 +72,13 @@ double conductance_at_most(const std::vector<path>& paths, const std::string& a,
     return std::max(0.0, circuit::solve(n).current.back().high);
 }
 
-/// What a measured discharge says of the capacitance between its nets, given the conductance that is known there (no inner bleeder counted unless written).
+/// What a measured discharge says of the capacitance between its nets, given the conductance that is known there (no inner bleeder counted unless
+/// written).
 value capacitance_from_decay(const supply& s, const std::vector<path>& paths, const charged_capacitor& inside)
 {
     for (const decay& d : s.decays) {
-        const bool same = (d.nets[0] == inside.positive && d.nets[1] == inside.negative) || (d.nets[0] == inside.negative && d.nets[1] == inside.positive);
+        const bool same =
+            (d.nets[0] == inside.positive && d.nets[1] == inside.negative) || (d.nets[0] == inside.negative && d.nets[1] == inside.positive);
         if (!same) {
             continue;
         }
@@ -114,7 +116,10 @@ value of_both(const value& farads, const value& volts, Result (*formula)(farad, 
     const auto at = [&](double c, double u) { return from(formula(farad::from_value(c), volt::from_value(u))).si; };
     for (const spread& c : farads.numbers) {
         for (const spread& u : volts.numbers) {
-            spread s{dimension_of<Result>, {at(c.in_use.low, u.in_use.low), at(c.in_use.high, u.in_use.high)}, {at(c.whole.low, u.whole.low), at(c.whole.high, u.whole.high)}, {}};
+            spread s{dimension_of<Result>,
+                     {at(c.in_use.low, u.in_use.low), at(c.in_use.high, u.in_use.high)},
+                     {at(c.whole.low, u.whole.low), at(c.whole.high, u.whole.high)},
+                     {}};
             if (c.nominal && u.nominal) {
                 s.nominal = at(*c.nominal, *u.nominal);
             }
@@ -164,6 +169,9 @@ std::vector<charged_capacitor> charged_capacitors(const supply& s, const library
         c.positive = e.from;
         c.negative = e.to;
         c.capacitance = v->second;
+        for (std::string& name : c.capacitance.missing) {
+            name += " (capacitance)"; // so that what is missing tells what it is
+        }
         c.voltage = held_voltage(states, e.from, e.to);
         fill(c, off);
         list.push_back(std::move(c));
@@ -192,11 +200,11 @@ std::vector<charged_capacitor> charged_capacitors(const supply& s, const library
 struct decay_network::inside {
     circuit::rc_network net;
     std::map<std::string, int> node;
-    std::vector<std::string> capacitors; // references, in order
+    std::vector<std::string> capacitors;                     // references, in order
     std::map<std::string, std::vector<std::string>> unknown; // per net: what is not known of a capacitor there
-    std::map<std::string, std::string> alias; // nets joined by wires
-    double input_volts = 0.0;              // greatest: below it the rectifier may refill
-    std::string rectifier_to;              // the net that the rectifier feeds
+    std::map<std::string, std::string> alias;                // nets joined by wires
+    double input_volts = 0.0;                                // greatest: below it the rectifier may refill
+    std::string rectifier_to;                                // the net that the rectifier feeds
     std::map<std::string, std::string> tied;
 
     std::string root(const std::string& net_name) const
@@ -289,7 +297,8 @@ decay_network::decay_network(const supply& s, const library& lib, const std::vec
             continue;
         }
         const circuit::box farads = box_of(c.capacitance, over::whole);
-        inside_->net.capacitors.push_back({inside_->at(c.positive), inside_->at(c.negative), {std::max(farads.low, 0.0), farads.high}, box_of(c.voltage, over::whole)});
+        inside_->net.capacitors.push_back(
+            {inside_->at(c.positive), inside_->at(c.negative), {std::max(farads.low, 0.0), farads.high}, box_of(c.voltage, over::whole)});
         inside_->capacitors.push_back(c.ref);
     }
     inside_->net.nodes = static_cast<int>(inside_->node.size());

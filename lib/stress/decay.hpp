@@ -1,6 +1,7 @@
 #pragma once
-// Switched off: what the linear R-C network that surely stays connected leaves on a pair of nets, and for how long (design section 6, laws 3 and 4). Only soldered resistive paths
-// discharge; tubes, loads, switches and plugs do not; the rectifier is open. Each capacitor starts anywhere between its least and greatest voltage.
+// Switched off: what the linear R-C network that surely stays connected leaves on a pair of nets, and for how long (design section 6, laws 3 and 4).
+// Only soldered resistive paths discharge; tubes, loads, switches and plugs do not; the rectifier is open. Each capacitor starts anywhere between its
+// least and greatest voltage.
 #include "stress/solution.hpp"
 
 #include <memory>

@@ -8,10 +8,10 @@ namespace onehand {
 namespace {
 
 constexpr std::array<std::pair<state, std::string_view>, 5> words{{{state::start_up, "start-up"},
-                                                                    {state::running, "running"},
-                                                                    {state::no_load, "no-load"},
-                                                                    {state::standby, "standby"},
-                                                                    {state::switched_off, "switched-off"}}};
+                                                                   {state::running, "running"},
+                                                                   {state::no_load, "no-load"},
+                                                                   {state::standby, "standby"},
+                                                                   {state::switched_off, "switched-off"}}};
 
 } // namespace
 

@@ -1,6 +1,6 @@
 #pragma once
-// Facts: computed or written values of a subject, in a state, with evidence. A number is a spread, or one of several spreads where an unknown choice leaves several
-// published values possible; it may be missing altogether and then names what is missing. The rule room asks for facts by name only.
+// Facts: computed or written values of a subject, in a state, with evidence. A number is a spread, or one of several spreads where an unknown choice
+// leaves several published values possible; it may be missing altogether and then names what is missing. The rule room asks for facts by name only.
 #include "document/place.hpp"
 #include "quantity/spread.hpp"
 
@@ -13,7 +13,7 @@
 namespace onehand {
 
 enum class state { start_up, running, no_load, standby, switched_off };
-std::string word_for(state s);                         // "no-load"
+std::string word_for(state s); // "no-load"
 std::optional<state> state_named(std::string_view word);
 
 /// What a figure was made of.
@@ -23,22 +23,23 @@ struct evidence {
         std::string figure; // "1 MΩ (950 kΩ .. 1.05 MΩ)"
         place at;
     };
-    std::string formula;    // "t = R C ln(U0/U)"
+    std::string formula; // "t = R C ln(U0/U)"
     std::vector<input> inputs;
-    bool searched = false;  // else proved
-    double margin = 0.0;    // relative, added to a searched figure
+    bool searched = false; // else proved
+    double margin = 0.0;   // relative, added to a searched figure
 };
 
 struct value {
     enum class type { number, truth, choice };
     type holds = type::number;
-    std::vector<spread> numbers;          // one: known; several: one of these; none: missing, or never (see reason)
+    std::vector<spread> numbers; // one: known; several: one of these; none: missing, or never (see reason)
     std::optional<bool> truth;
-    std::string choice;                   // empty: unknown
-    std::vector<std::string> missing;     // names what would be needed: "C4.value". A number with missing inputs may still have a spread: what is certain all the same
-    std::vector<std::string> assumed;     // assumptions it rests on, in words: a verdict on it is marginal at best
-    std::string reason;                   // why there is no number although nothing is missing ("never: nothing discharges C4"); such a time exceeds every limit
-    bool never = false;                   // a time that never comes
+    std::string choice; // empty: unknown
+    std::vector<std::string>
+        missing; // names what would be needed: "C4.value". A number with missing inputs may still have a spread: what is certain all the same
+    std::vector<std::string> assumed; // assumptions it rests on, in words: a verdict on it is marginal at best
+    std::string reason; // why there is no number although nothing is missing ("never: nothing discharges C4"); such a time exceeds every limit
+    bool never = false; // a time that never comes
     evidence shown;
 
     bool known() const { return missing.empty(); }
@@ -51,8 +52,8 @@ value missing_value(value::type t, std::vector<std::string> names);
 
 /// What a rule is about.
 struct subject {
-    std::string kind;  // a part kind, "gap", "net-pair", "stored", "access", "converter" or "supply"
-    std::string name;  // "R7", "R7/1", "HT-0V", "C4 pads"
+    std::string kind; // a part kind, "gap", "net-pair", "stored", "access", "converter" or "supply"
+    std::string name; // "R7", "R7/1", "HT-0V", "C4 pads"
     std::vector<std::string> nets;
     place at;
 
@@ -66,9 +67,9 @@ struct fact_spec {
     value::type type = value::type::number;
     dimension dim{};
     std::string meaning;
-    bool solved = false;                    // correlated with others of the same solution: at most one in a comparison
-    std::vector<std::string> depends_on;    // fields it is computed from: not to be compared with each other
-    std::vector<std::string> choices;       // for choices
+    bool solved = false;                 // correlated with others of the same solution: at most one in a comparison
+    std::vector<std::string> depends_on; // fields it is computed from: not to be compared with each other
+    std::vector<std::string> choices;    // for choices
 };
 
 /// Subjects "part" in the list hold for every part kind.

@@ -11,10 +11,13 @@ namespace {
 value::type type_of(const field_spec& spec)
 {
     switch (spec.holds) {
-    case field_spec::type::truth: return value::type::truth;
+    case field_spec::type::truth:
+        return value::type::truth;
     case field_spec::type::choice:
-    case field_spec::type::text: return value::type::choice;
-    default: return value::type::number;
+    case field_spec::type::text:
+        return value::type::choice;
+    default:
+        return value::type::number;
     }
 }
 
@@ -113,10 +116,7 @@ value inside_temperature(const use& u)
     const spread& a = *u.ambient->number();
     const spread& r = *u.inside_rise->number();
     // The rise builds up from none when the supply has just been switched on.
-    v.numbers.push_back({dim::temperature,
-                         {a.in_use.low, a.in_use.high + r.in_use.high},
-                         {a.whole.low, a.whole.high + r.whole.high},
-                         std::nullopt});
+    v.numbers.push_back({dim::temperature, {a.in_use.low, a.in_use.high + r.in_use.high}, {a.whole.low, a.whole.high + r.whole.high}, std::nullopt});
     v.shown.formula = "ambient + inside-rise";
     v.shown.inputs = {input_of("use.ambient", *u.ambient), input_of("use.inside-rise", *u.inside_rise)};
     return v;

@@ -1,6 +1,6 @@
 #pragma once
-// A field of a part as a value: as written, else from the published table of its choice (package, dielectric, surface), else missing by name. A named choice with several
-// published values is judged at its worst end; an unknown choice leaves every published value possible (design law 6).
+// A field of a part as a value: as written, else from the published table of its choice (package, dielectric, surface), else missing by name. A named
+// choice with several published values is judged at its worst end; an unknown choice leaves every published value possible (design law 6).
 #include "published/library.hpp"
 #include "stress/facts.hpp"
 #include "supply/supply.hpp"

@@ -59,13 +59,15 @@ void solved_supply::list_gaps()
             gap_item item;
             item.written = &g;
             item.floor = floor;
-            item.insulation = g.insulation && g.insulation->text() != nullptr ? *g.insulation->text()
-                                                                             : default_insulation(g.nets[0], other, circuits, touchable);
+            item.insulation =
+                g.insulation && g.insulation->text() != nullptr ? *g.insulation->text() : default_insulation(g.nets[0], other, circuits, touchable);
             const value* v = voltage_of(pairs_, g.nets[0], other);
             if (v == nullptr && floor) {
                 continue; // 60 V or less: needs no gap of its own
             }
-            item.voltage = v != nullptr ? *v : hull(magnitude(at(state::running).voltage(g.nets[0], other)), magnitude(at(state::no_load).voltage(g.nets[0], other)));
+            item.voltage =
+                v != nullptr ? *v
+                             : hull(magnitude(at(state::running).voltage(g.nets[0], other)), magnitude(at(state::no_load).voltage(g.nets[0], other)));
             item.person_side = touchable.contains(g.nets[0]) != touchable.contains(other);
             item.about = {"gap", gap_name(g, item.insulation, floor), {g.nets[0], other}, g.at};
             const auto same = std::find_if(found.begin(), found.end(), [&](const gap_item& i) { return i.insulation == item.insulation; });

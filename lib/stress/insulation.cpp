@@ -87,7 +87,8 @@ std::set<std::string> touchable_nets(const supply& s)
     return nets;
 }
 
-std::string default_insulation(const std::string& a, const std::string& b, const std::map<std::string, int>& circuits, const std::set<std::string>& touchable)
+std::string default_insulation(const std::string& a, const std::string& b, const std::map<std::string, int>& circuits,
+                               const std::set<std::string>& touchable)
 {
     if (touchable.contains(a) != touchable.contains(b)) {
         return "reinforced";

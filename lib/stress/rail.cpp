@@ -11,8 +11,8 @@ namespace onehand {
 
 namespace {
 
-constexpr double unsaid_spike = 0.30;   // of the rail: common practice, no source
-constexpr double rectifier_drop = 1.5;  // volt at most across rectifier and coil when settled: common practice, no source
+constexpr double unsaid_spike = 0.30;  // of the rail: common practice, no source
+constexpr double rectifier_drop = 1.5; // volt at most across rectifier and coil when settled: common practice, no source
 
 bool by_feedback(const converter& c)
 {
@@ -27,12 +27,18 @@ std::string end_name(const dc_network& n, const circuit::output_end& e)
         return it == index.end() ? std::string("?") : n.elements[static_cast<std::size_t>(it - index.begin())].ref;
     };
     switch (e.what) {
-    case of::branch: return element_of(n.branch_of);
-    case of::track: return element_of(n.track_of) + " track";
-    case of::track_position: return element_of(n.track_of) + " wiper";
-    case of::threshold: return "threshold";
-    case of::bias: return "bias current";
-    case of::source: return static_cast<std::size_t>(e.index) < n.source_names.size() ? n.source_names[static_cast<std::size_t>(e.index)] : "a held net";
+    case of::branch:
+        return element_of(n.branch_of);
+    case of::track:
+        return element_of(n.track_of) + " track";
+    case of::track_position:
+        return element_of(n.track_of) + " wiper";
+    case of::threshold:
+        return "threshold";
+    case of::bias:
+        return "bias current";
+    case of::source:
+        return static_cast<std::size_t>(e.index) < n.source_names.size() ? n.source_names[static_cast<std::size_t>(e.index)] : "a held net";
     }
     return "?";
 }
@@ -58,7 +64,8 @@ void find_set_point(const supply& s, const library& lib, rail& r)
     if (at_worst.feedback_lost) {
         r.feedback_lost = missing.empty();
         r.lost_why = "at some setting " + s.stage->feedback_net + " no longer depends on the output, or no output holds it";
-        r.output = missing_value(value::type::number, missing.empty() ? std::vector<std::string>{"a set point: feedback is lost at some setting"} : missing);
+        r.output =
+            missing_value(value::type::number, missing.empty() ? std::vector<std::string>{"a set point: feedback is lost at some setting"} : missing);
         return;
     }
     r.output = to_value(in_use.output, at_worst.output, dim::voltage);
@@ -134,7 +141,8 @@ void find_peak(const supply& s, rail& r)
         r.peak.shown.inputs.push_back(input_of(c.name + ".spike", *spike));
     } else {
         r.peak.shown.formula = "rail + 30 % of it";
-        r.peak.assumed.push_back("a spike of 30 % of the rail on " + (r.switch_net.empty() ? std::string("the switch") : r.switch_net) + " (" + c.name + ".spike unsaid; practice)");
+        r.peak.assumed.push_back("a spike of 30 % of the rail on " + (r.switch_net.empty() ? std::string("the switch") : r.switch_net) + " (" +
+                                 c.name + ".spike unsaid; practice)");
     }
 }
 

@@ -1,6 +1,6 @@
 #pragma once
-// The output as the converter holds it: its set point from the feedback net or as declared, what sets each end, the spike on the switch. Until the stage itself is
-// computed, an unsaid spike is an assumption of 30 % of the rail (common practice, no source).
+// The output as the converter holds it: its set point from the feedback net or as declared, what sets each end, the spike on the switch. Until the
+// stage itself is computed, an unsaid spike is an assumption of 30 % of the rail (common practice, no source).
 #include "stress/fields.hpp"
 
 namespace onehand {
@@ -17,10 +17,10 @@ struct rail {
     std::vector<end> set_by;
     bool feedback_lost = false;
     std::string lost_why;
-    value standby;                  // stage stopped and settled, input on
-    std::string switch_net;         // boost: swings between the return of the switch and the peak
+    value standby;          // stage stopped and settled, input on
+    std::string switch_net; // boost: swings between the return of the switch and the peak
     std::string switch_return;
-    value peak;                     // drain to source at its highest
+    value peak; // drain to source at its highest
     std::string gate_net;
     std::vector<std::string> stage_parts; // switch and rectifier: told by the stage, not by the d.c. network
 };

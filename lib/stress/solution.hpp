@@ -1,6 +1,6 @@
 #pragma once
-// The d.c. solution of a supply in one state: the potential of every net, the voltage between any two, and what every body of a part sees. All of it spreads that hold
-// for every combination inside the stated ranges; what rests on something unknown says so.
+// The d.c. solution of a supply in one state: the potential of every net, the voltage between any two, and what every body of a part sees. All of it
+// spreads that hold for every combination inside the stated ranges; what rests on something unknown says so.
 #include "stress/rail.hpp"
 #include "stress/wiring.hpp"
 
@@ -20,10 +20,10 @@ struct body_solution {
 struct dc_solution {
     state in = state::running;
     std::vector<std::string> nets;
-    std::map<std::string, value> potential;                            // against the return
-    std::map<std::pair<std::string, std::string>, value> between;      // first above second; names in order
-    std::map<std::string, body_solution> bodies;                       // by reference of the body
-    std::set<std::string> floating;                                    // nothing holds it in some case: bounded by what it touches
+    std::map<std::string, value> potential;                       // against the return
+    std::map<std::pair<std::string, std::string>, value> between; // first above second; names in order
+    std::map<std::string, body_solution> bodies;                  // by reference of the body
+    std::set<std::string> floating;                               // nothing holds it in some case: bounded by what it touches
 
     /// Signed voltage of a above b.
     value voltage(const std::string& a, const std::string& b) const;

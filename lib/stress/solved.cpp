@@ -40,7 +40,8 @@ value working_voltage(const std::vector<dc_solution>& states, const std::string&
 
 } // namespace
 
-solved_supply::solved_supply(supply s, const library& lib) : written_(std::move(s)), bodies_(expand_bodies(written_)), lib_(lib), output_(find_rail(bodies_, lib_))
+solved_supply::solved_supply(supply s, const library& lib)
+    : written_(std::move(s)), bodies_(expand_bodies(written_)), lib_(lib), output_(find_rail(bodies_, lib_))
 {
     for (const state in : {state::running, state::no_load, state::standby}) {
         states_.push_back(solve_dc(bodies_, lib_, output_, in));
@@ -166,8 +167,9 @@ void solved_supply::list_pairs()
             pairs_.push_back(std::move(item));
         }
     }
-    std::stable_sort(pairs_.begin(), pairs_.end(),
-                     [](const pair_item& a, const pair_item& b) { return highest(a.voltage).value_or(unbounded) > highest(b.voltage).value_or(unbounded); });
+    std::stable_sort(pairs_.begin(), pairs_.end(), [](const pair_item& a, const pair_item& b) {
+        return highest(a.voltage).value_or(unbounded) > highest(b.voltage).value_or(unbounded);
+    });
 }
 
 } // namespace onehand

@@ -1,6 +1,6 @@
 #pragma once
-// A supply solved as it stands: the rail, every d.c. state, what is stored, what stays after switch-off, the working voltage of every gap. It is the source of facts for the
-// rules and holds the figures that reports print. Nothing here is judged.
+// A supply solved as it stands: the rail, every d.c. state, what is stored, what stays after switch-off, the working voltage of every gap. It is the
+// source of facts for the rules and holds the figures that reports print. Nothing here is judged.
 #include "stress/decay.hpp"
 #include "stress/spacing.hpp"
 #include "supply/change.hpp"
@@ -30,7 +30,7 @@ struct access_item {
     access where;
     subject about;
     bool touchable = false;
-    std::map<state, value> voltage;       // magnitude
+    std::map<state, value> voltage; // magnitude
     std::map<state, value> touch_current;
     value charge;
     bool discharge_path = false;
@@ -38,7 +38,7 @@ struct access_item {
 
 struct pair_item {
     subject about;
-    value voltage; // working voltage, magnitude, over running, no-load and standby
+    value voltage;       // working voltage, magnitude, over running, no-load and standby
     std::string covered; // "gap" | "floor" | "none"
     bool person_side = false;
 };

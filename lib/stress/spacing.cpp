@@ -156,14 +156,15 @@ value clearance_needed(const spread& volts, int degree, bool reinforced, const u
                          {floored.in_use.low * factor->in_use.low, floored.in_use.high * factor->in_use.high},
                          {floored.whole.low * factor->whole.low, floored.whole.high * factor->whole.high},
                          std::nullopt});
-    v.shown.formula = reinforced ? "clearance at 160 % of the peak, least by pollution degree, times altitude" : "clearance at the peak, least by pollution degree, times altitude";
+    v.shown.formula = reinforced ? "clearance at 160 % of the peak, least by pollution degree, times altitude"
+                                 : "clearance at the peak, least by pollution degree, times altitude";
     return v;
 }
 
 } // namespace
 
-spacing_need spacing_needed(const value& working_voltage, const std::string& insulation, const std::optional<field>& surface, const std::optional<field>& cti,
-                            const use& used, const library& lib)
+spacing_need spacing_needed(const value& working_voltage, const std::string& insulation, const std::optional<field>& surface,
+                            const std::optional<field>& cti, const use& used, const library& lib)
 {
     spacing_need need;
     inherit(need.creepage, working_voltage);

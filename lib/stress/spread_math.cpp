@@ -34,6 +34,7 @@ value combine(const value& a, const value& b, const on_ranges& f, dimension d, c
             out.numbers.push_back(s);
         }
     }
+    out.shown = a.shown; // callers that make another figure of it say so
     inherit(out, a);
     inherit(out, b);
     return out;
@@ -66,14 +67,21 @@ value magnitude(const value& v)
 value product(const value& a, const value& b, double factor)
 {
     return combine(
-        a, b, [factor](const range& x, const range& y) { return range{factor * x.low * y.low, factor * x.high * y.high}; }, dimension_of(a) * dimension_of(b),
-        [factor](double x, double y) { return factor * x * y; });
+        a, b,
+        [factor](const range& x, const range& y) {
+            return range{factor * x.low * y.low, factor * x.high * y.high};
+        },
+        dimension_of(a) * dimension_of(b), [factor](double x, double y) { return factor * x * y; });
 }
 
 value sum(const value& a, const value& b)
 {
     return combine(
-        a, b, [](const range& x, const range& y) { return range{x.low + y.low, x.high + y.high}; }, dimension_of(a), [](double x, double y) { return x + y; });
+        a, b,
+        [](const range& x, const range& y) {
+            return range{x.low + y.low, x.high + y.high};
+        },
+        dimension_of(a), [](double x, double y) { return x + y; });
 }
 
 value hull(const value& a, const value& b)
@@ -91,8 +99,11 @@ value hull(const value& a, const value& b)
 value greater(const value& a, const value& b)
 {
     return combine(
-        a, b, [](const range& x, const range& y) { return range{std::max(x.low, y.low), std::max(x.high, y.high)}; }, dimension_of(a),
-        [](double x, double y) { return std::max(x, y); });
+        a, b,
+        [](const range& x, const range& y) {
+            return range{std::max(x.low, y.low), std::max(x.high, y.high)};
+        },
+        dimension_of(a), [](double x, double y) { return std::max(x, y); });
 }
 
 std::optional<double> highest(const value& v)

@@ -1,5 +1,6 @@
 #pragma once
-// Small arithmetic on values: what is missing or assumed of the parts is missing or assumed of the whole. Independent figures only; what is correlated is spread jointly elsewhere.
+// Small arithmetic on values: what is missing or assumed of the parts is missing or assumed of the whole. Independent figures only; what is
+// correlated is spread jointly elsewhere.
 #include "stress/facts.hpp"
 
 namespace onehand {

@@ -11,13 +11,20 @@ using form = element_spec::form;
 std::string form_name(form f)
 {
     switch (f) {
-    case form::resistance: return "resistance";
-    case form::clamp: return "clamp";
-    case form::current: return "current";
-    case form::capacitance: return "capacitance";
-    case form::inductance: return "inductance";
-    case form::track: return "track";
-    default: return {};
+    case form::resistance:
+        return "resistance";
+    case form::clamp:
+        return "clamp";
+    case form::current:
+        return "current";
+    case form::capacitance:
+        return "capacitance";
+    case form::inductance:
+        return "inductance";
+    case form::track:
+        return "track";
+    default:
+        return {};
     }
 }
 
@@ -35,7 +42,8 @@ std::vector<element_spec> specs_of(const part& p, const kind_spec& kind)
     }
     std::vector<element_spec> specs = mode->elements;
     for (const element_spec& whole : kind.elements) {
-        const bool replaced = std::any_of(specs.begin(), specs.end(), [&](const element_spec& s) { return s.from == whole.from && s.to == whole.to; });
+        const bool replaced =
+            std::any_of(specs.begin(), specs.end(), [&](const element_spec& s) { return s.from == whole.from && s.to == whole.to; });
         if (!replaced) {
             specs.push_back(whole);
         }
@@ -123,7 +131,8 @@ bool may_conduct(const element& e)
 
 bool surely_conducts(const element& e)
 {
-    return std::all_of(e.forms.begin(), e.forms.end(), [](form f) { return f == form::closed || f == form::resistance || f == form::track || f == form::inductance; });
+    return std::all_of(e.forms.begin(), e.forms.end(),
+                       [](form f) { return f == form::closed || f == form::resistance || f == form::track || f == form::inductance; });
 }
 
 } // namespace onehand

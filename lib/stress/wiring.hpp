@@ -1,6 +1,6 @@
 #pragma once
-// Parts as ideal elements: each part of a description, whole or with the fault put on it, becomes the elements its kind gives for a state, with their values and with
-// the names of what is not known of them. Bodies of a series string are parts of their own here (expand_bodies).
+// Parts as ideal elements: each part of a description, whole or with the fault put on it, becomes the elements its kind gives for a state, with their
+// values and with the names of what is not known of them. Bodies of a series string are parts of their own here (expand_bodies).
 #include "stress/fields.hpp"
 
 namespace onehand {
@@ -10,12 +10,12 @@ struct element {
     std::string ref;
     std::string from;
     std::string to;
-    std::vector<element_spec::form> forms; // several: any one of them may be the case
+    std::vector<element_spec::form> forms;      // several: any one of them may be the case
     std::map<element_spec::form, value> values; // of the forms that need one; a value may be missing
-    std::string wiper;                     // form track: the third net
-    value position;                        // form track: 0 at `from`
-    bool charge_path = false;              // soldered and resistive: counts for discharge
-    bool main = true;                      // it lies between the terminals that the part's voltage is told of
+    std::string wiper;                          // form track: the third net
+    value position;                             // form track: 0 at `from`
+    bool charge_path = false;                   // soldered and resistive: counts for discharge
+    bool main = true;                           // it lies between the terminals that the part's voltage is told of
 };
 
 /// The elements of one part in a state.

@@ -64,7 +64,8 @@ std::string put_fault(supply& s, const library& lib, const change& c)
         return c.ref + " is no part of this supply";
     }
     const kind_spec* kind = lib.find_kind(p->kind);
-    const bool known = kind != nullptr && std::any_of(kind->failures.begin(), kind->failures.end(), [&](const failure_spec& f) { return f.mode == c.mode; });
+    const bool known =
+        kind != nullptr && std::any_of(kind->failures.begin(), kind->failures.end(), [&](const failure_spec& f) { return f.mode == c.mode; });
     if (!known) {
         return "a " + p->kind + " has no failure mode '" + c.mode + "'";
     }
@@ -165,17 +166,25 @@ std::string open_terminal(supply& s, const change& c)
 std::string edit(supply& s, const library& lib, const change& c)
 {
     switch (c.sort) {
-    case what::none: return {};
-    case what::part_fault: return put_fault(s, lib, c);
+    case what::none:
+        return {};
+    case what::part_fault:
+        return put_fault(s, lib, c);
     case what::meter:
-    case what::body: return put_meter(s, c);
-    case what::bridge: return put_bridge(s, c.nets);
-    case what::input_event: return put_input_event(s, c);
-    case what::output_unplugged: return unplug(s);
+    case what::body:
+        return put_meter(s, c);
+    case what::bridge:
+        return put_bridge(s, c.nets);
+    case what::input_event:
+        return put_input_event(s, c);
+    case what::output_unplugged:
+        return unplug(s);
     case what::output_shorted:
         return s.stage && s.stage->outputs.size() == 2 ? put_bridge(s, s.stage->outputs) : "there is no output";
-    case what::wiper: return set_wiper(s, c);
-    case what::terminal_open: return open_terminal(s, c);
+    case what::wiper:
+        return set_wiper(s, c);
+    case what::terminal_open:
+        return open_terminal(s, c);
     }
     return "no such change";
 }
@@ -187,16 +196,26 @@ std::string describe(const change& c)
     const std::string figure = c.value ? format_spread(*c.value) : "";
     const auto pair = [&](const char* word) { return c.nets.size() == 2 ? c.nets[0] + word + c.nets[1] : std::string("?"); };
     switch (c.sort) {
-    case what::none: return "none";
-    case what::part_fault: return c.ref + " " + c.mode;
-    case what::meter: return "meter of " + figure + " from " + pair(" to ");
-    case what::body: return "a body of " + figure + " from " + pair(" to ");
-    case what::bridge: return pair(" bridged to ");
-    case what::input_event: return "input " + c.mode + (figure.empty() ? "" : " at " + figure);
-    case what::output_unplugged: return "output unplugged";
-    case what::output_shorted: return "output shorted";
-    case what::wiper: return c.ref + " wiper at " + figure;
-    case what::terminal_open: return c.ref + " " + c.mode + " off";
+    case what::none:
+        return "none";
+    case what::part_fault:
+        return c.ref + " " + c.mode;
+    case what::meter:
+        return "meter of " + figure + " from " + pair(" to ");
+    case what::body:
+        return "a body of " + figure + " from " + pair(" to ");
+    case what::bridge:
+        return pair(" bridged to ");
+    case what::input_event:
+        return "input " + c.mode + (figure.empty() ? "" : " at " + figure);
+    case what::output_unplugged:
+        return "output unplugged";
+    case what::output_shorted:
+        return "output shorted";
+    case what::wiper:
+        return c.ref + " wiper at " + figure;
+    case what::terminal_open:
+        return c.ref + " " + c.mode + " off";
     }
     return "none";
 }

@@ -1,6 +1,7 @@
 #pragma once
 // One edit to a description as it stands: a part fault, a meter across two nets, an input event, the output unplugged or shorted, a wiper
-// position, two nets bridged, a net broken at a terminal. Faults, broken discharge paths, readings, spacing and proposals all use changes. Applying one never alters the original.
+// position, two nets bridged, a net broken at a terminal. Faults, broken discharge paths, readings, spacing and proposals all use changes. Applying
+// one never alters the original.
 #include "supply/supply.hpp"
 
 namespace onehand {
@@ -8,10 +9,10 @@ namespace onehand {
 struct change {
     enum class what { none, part_fault, meter, input_event, output_unplugged, output_shorted, wiper, bridge, terminal_open, body };
     what sort = what::none;
-    std::string ref;                 // part (fault, wiper, terminal_open)
-    std::string mode;                // failure mode; input event "reversed" | "brown-out" | "hot-plugged" | "highest-adapter"; terminal name
-    std::vector<std::string> nets;   // meter, bridge, body
-    std::optional<spread> value;     // meter or body resistance, wiper position, adapter voltage
+    std::string ref;               // part (fault, wiper, terminal_open)
+    std::string mode;              // failure mode; input event "reversed" | "brown-out" | "hot-plugged" | "highest-adapter"; terminal name
+    std::vector<std::string> nets; // meter, bridge, body
+    std::optional<spread> value;   // meter or body resistance, wiper position, adapter voltage
 
     friend bool operator==(const change&, const change&) = default;
 };

@@ -92,7 +92,8 @@ private:
         }
         if (e->value.items.size() != 1 || e->value.items[0].kind != node_kind::list) {
             const bool flat = !e->value.items.empty() && e->value.items[0].kind == node_kind::text;
-            r_.complain(e->value.at, flat ? "'outputs' is a list of pairs, in double brackets: [[\"HT\", \"0V\"]]" : "one converter with one output for now");
+            r_.complain(e->value.at,
+                        flat ? "'outputs' is a list of pairs, in double brackets: [[\"HT\", \"0V\"]]" : "one converter with one output for now");
             return;
         }
         c_.outputs = r_.nets(e->value.items[0], 2);
@@ -117,8 +118,8 @@ private:
         if (e == nullptr || !r_.expect(e->value, node_kind::table, "'drive' is a table in braces")) {
             return;
         }
-        auto f = r_.fields(e->value, {{"frequency", type::quantity, dim::frequency, {}}, {"duty", type::quantity, dim::none, {}, true, 0.0, 1.0}}, {"gate", "astable"},
-                           "'drive'");
+        auto f = r_.fields(e->value, {{"frequency", type::quantity, dim::frequency, {}}, {"duty", type::quantity, dim::none, {}, true, 0.0, 1.0}},
+                           {"gate", "astable"}, "'drive'");
         if (const auto it = f.find("frequency"); it != f.end()) {
             c_.frequency = it->second;
         }

@@ -113,7 +113,8 @@ private:
         }
         const bool same = part_.terminals.size() == 2 && part_.terminals[0].net == part_.terminals[1].net;
         if (same) {
-            r_.complain(entry_.value.at.line != 0 ? part_.terminals[1].at : part_.at, "both ends of '" + part_.ref + "' are the same net, '" + part_.terminals[0].net + "'");
+            r_.complain(entry_.value.at.line != 0 ? part_.terminals[1].at : part_.at,
+                        "both ends of '" + part_.ref + "' are the same net, '" + part_.terminals[0].net + "'");
         }
     }
 

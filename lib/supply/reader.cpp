@@ -135,7 +135,8 @@ std::optional<field> reader::value(const entry& e, const key_spec& spec)
         return std::nullopt;
     }
     if (spec.positive && std::isfinite(s.whole.low) && s.whole.low < 0.0) {
-        complain(n.at, s.nominal && *s.nominal < 0.0 ? "'" + spec.name + "' cannot be negative" : "the tolerance of '" + spec.name + "' reaches below zero");
+        complain(n.at, s.nominal && *s.nominal < 0.0 ? "'" + spec.name + "' cannot be negative"
+                                                     : "the tolerance of '" + spec.name + "' reaches below zero");
         return std::nullopt;
     }
     if (s.whole.high > spec.most && std::isfinite(s.whole.high)) {
@@ -150,7 +151,8 @@ std::optional<field> reader::value(const entry& e, const key_spec& spec)
     return f;
 }
 
-std::map<std::string, field> reader::fields(const node& table, const std::vector<key_spec>& specs, const std::set<std::string>& handled, const std::string& where)
+std::map<std::string, field> reader::fields(const node& table, const std::vector<key_spec>& specs, const std::set<std::string>& handled,
+                                            const std::string& where)
 {
     std::map<std::string, field> out;
     std::vector<std::string> known(handled.begin(), handled.end());

@@ -202,7 +202,8 @@ void read_gaps(reader& r)
             r.complain(t->at, "no 'nets' in this gap");
             continue;
         }
-        const bool floor = e->value.kind == node_kind::list && e->value.items.size() == 2 && e->value.items[1].kind == node_kind::text && e->value.items[1].text == "*";
+        const bool floor = e->value.kind == node_kind::list && e->value.items.size() == 2 && e->value.items[1].kind == node_kind::text &&
+                           e->value.items[1].text == "*";
         if (floor) {
             if (const std::string net = r.net(e->value.items[0]); !net.empty()) {
                 g.nets = {net, "*"};
@@ -221,7 +222,8 @@ void read_accesses(reader& r)
     for (const node* t : tables_at(r, "access")) {
         access a;
         a.at = t->at;
-        auto f = r.fields(*t, {{"at", type::text, {}, {}}, {"when", type::choice, {}, {"always", "cover off", "plug withdrawn"}}}, {"nets"}, "[[access]]");
+        auto f =
+            r.fields(*t, {{"at", type::text, {}, {}}, {"when", type::choice, {}, {"always", "cover off", "plug withdrawn"}}}, {"nets"}, "[[access]]");
         if (const auto where = taken(f, "at")) {
             a.where = *where->text();
         }

@@ -37,8 +37,8 @@ struct part {
     std::map<std::string, field> fields; // as written, series/parallel/role included below instead
     int series = 1;
     int parallel = 1;
-    std::string role;   // "bleeder", "balance", "limiting", ... as written
-    std::string fault;  // failure mode put on by a change; empty: whole
+    std::string role;  // "bleeder", "balance", "limiting", ... as written
+    std::string fault; // failure mode put on by a change; empty: whole
 
     const terminal* find_terminal(const std::string& name) const;
     const std::string& net(const std::string& terminal_name) const; // empty text if it has none
@@ -89,8 +89,8 @@ struct astable_drive {
 };
 
 struct converter {
-    std::string name;       // K1
-    std::string topology;   // boost | flyback | boost-multiplier | module
+    std::string name;     // K1
+    std::string topology; // boost | flyback | boost-multiplier | module
     std::string inductor, power_switch, rectifier;
     std::vector<std::string> inputs;  // what feeds it, positive net first; may be unsaid
     std::vector<std::string> outputs; // positive net first
@@ -99,7 +99,7 @@ struct converter {
     std::optional<field> frequency, duty;
     std::optional<astable_drive> astable;
     std::string feedback_net;
-    std::string feedback_return; // the return net if unsaid
+    std::string feedback_return;           // the return net if unsaid
     std::map<std::string, field> feedback; // threshold, bias-current, lag, mode
     std::map<std::string, field> fields;   // output-voltage, source-resistance, power-limit, internal-capacitance, internal-bleeder, spike ...
     place at;
@@ -125,7 +125,7 @@ struct supply {
     std::optional<converter> stage;
     std::vector<part> parts; // in document order
     std::vector<gap> gaps;
-    std::vector<access> accesses;  // empty: every net, cover off
+    std::vector<access> accesses; // empty: every net, cover off
     std::vector<decay> decays;
     protection guarded;
     std::vector<std::string> nets; // every net named, in order of first naming; the inner nets of strings are not among them
@@ -140,11 +140,12 @@ struct supply_result {
     std::vector<complaint> complaints; // notes may be there even where it is usable
 };
 
-/// Reads and checks a whole description; every mistake of meaning in one run. `settings` are --set edits ("R9=470k", "R9.value=470k", "use.altitude=2500 m"), applied before checking;
-/// a mistake in one is a complaint in file "--set".
+/// Reads and checks a whole description; every mistake of meaning in one run. `settings` are --set edits ("R9=470k", "R9.value=470k",
+/// "use.altitude=2500 m"), applied before checking; a mistake in one is a complaint in file "--set".
 supply_result read_supply(const document& doc, const library& lib, const std::vector<std::string>& settings = {});
 
-/// Every part with series or parallel above one becomes single bodies, R7/1, R7/2 ...; the nets between bodies are R7~1 ... and appear in no list of nets.
+/// Every part with series or parallel above one becomes single bodies, R7/1, R7/2 ...; the nets between bodies are R7~1 ... and appear in no list of
+/// nets.
 supply expand_bodies(const supply& s);
 
 /// R2 before R10, R7/1 before R7/2.

@@ -49,6 +49,7 @@ inline const finding* found(const audit_result& r, const std::string& rule, cons
     return nullptr;
 }
 
-inline const char* const names[] = {"tide-clock-as-built.toml", "tide-clock-corrected.toml", "geiger-bench.toml", "minimal.toml", "negative-rail.toml"};
+inline const char* const names[] = {"tide-clock-as-built.toml", "tide-clock-corrected.toml", "geiger-bench.toml", "minimal.toml",
+                                    "negative-rail.toml"};
 
 } // namespace onehand::test

@@ -16,8 +16,10 @@ namespace {
 
 std::string described(double volts, const std::string& rest, const std::string& use)
 {
-    return fmt::format("[supply]\nname = \"T\"\nreturn = \"0V\"\ncomplete = [\"capacitors\", \"sources\", \"access\"]\n[use]\naltitude = \"0 m\"\n{}\n[input]\nnets = [\"VIN\", \"0V\"]\n"
-                       "voltage = \"12 V\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = \"{} V\"\ninternal-capacitance = \"0 F\"\n"
+    return fmt::format("[supply]\nname = \"T\"\nreturn = \"0V\"\ncomplete = [\"capacitors\", \"sources\", \"access\"]\n[use]\naltitude = \"0 "
+                       "m\"\n{}\n[input]\nnets = [\"VIN\", \"0V\"]\n"
+                       "voltage = \"12 V\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = \"{} "
+                       "V\"\ninternal-capacitance = \"0 F\"\n"
                        "[resistor]\nR1 = {{ nets = [\"HT\", \"VIN\"], value = \"1G\" }}\n{}\n",
                        use, volts, rest);
 }
@@ -43,7 +45,8 @@ TEST_CASE("IEC 62368-1 table 5 row by row through audit")
         for (const double factor : {1.0, 2.0}) {
             for (const double side : {0.999, 1.001}) {
                 const double volts = es1[i] * factor * side;
-                const audit_outcome o = run(described(volts, fmt::format("[capacitor]\nC1 = {{ nets = [\"HT\", \"0V\"], value = \"{} nF\" }}\n", nf[i]), ""));
+                const audit_outcome o =
+                    run(described(volts, fmt::format("[capacitor]\nC1 = {{ nets = [\"HT\", \"0V\"], value = \"{} nF\" }}\n", nf[i]), ""));
                 REQUIRE(o.result);
                 const stored_facts* c = capacitor(*o.result, "C1");
                 REQUIRE(c != nullptr);
@@ -70,7 +73,8 @@ TEST_CASE("IEC 60664-1 creepage row by row through audit")
             const std::string& name = t.columns[c].name;
             const std::string degree = name.substr(2, 1);
             const std::string cti = name.ends_with("-I") ? "600" : name.ends_with("-II") ? "400" : "175";
-            const std::string gap = fmt::format("[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"1 m\"\ncreepage = \"1 m\"\ncti = {}\ninsulation = \"basic\"\n", cti);
+            const std::string gap =
+                fmt::format("[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"1 m\"\ncreepage = \"1 m\"\ncti = {}\ninsulation = \"basic\"\n", cti);
             const audit_outcome o = run(described(t.axis[row], gap, "pollution-degree = " + degree));
             REQUIRE(o.result);
             const finding* f = found(*o.result, "creepage", "HT to 0V");
@@ -93,7 +97,8 @@ TEST_CASE("IEC 60664-1 creepage row by row through audit")
 TEST_CASE("printed-wiring columns hold for board copper only")
 {
     const auto asked = [](const char* surface) {
-        const std::string gap = fmt::format("[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"1 m\"\ncreepage = \"1 m\"\nsurface = \"{}\"\ninsulation = \"basic\"\n", surface);
+        const std::string gap = fmt::format(
+            "[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"1 m\"\ncreepage = \"1 m\"\nsurface = \"{}\"\ninsulation = \"basic\"\n", surface);
         return found(*run(described(400, gap, "pollution-degree = 2")).result, "creepage", "HT to 0V")->limit->numbers.front().whole.high;
     };
     CHECK(asked("board copper") == doctest::Approx(2.0e-3).epsilon(1e-9).scale(0));
@@ -104,7 +109,8 @@ TEST_CASE("printed-wiring columns hold for board copper only")
 TEST_CASE("reinforced is twice, altitude widens clearances only")
 {
     const auto run_gap = [](const char* insulation, const char* altitude) {
-        const std::string gap = fmt::format("[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"1 m\"\ncreepage = \"1 m\"\nsurface = \"FR-4\"\ninsulation = \"{}\"\n", insulation);
+        const std::string gap = fmt::format(
+            "[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"1 m\"\ncreepage = \"1 m\"\nsurface = \"FR-4\"\ninsulation = \"{}\"\n", insulation);
         std::string text = described(1500, gap, "pollution-degree = 2");
         return *run(replaced(text, "altitude = \"0 m\"", std::string("altitude = \"") + altitude + "\"")).result;
     };
@@ -112,7 +118,8 @@ TEST_CASE("reinforced is twice, altitude widens clearances only")
     CHECK(found(basic, "clearance", "HT to 0V")->limit->numbers.front().whole.high == doctest::Approx(0.76e-3).epsilon(1e-9).scale(0));
     const audit_result high = run_gap("basic", "4000 m");
     CHECK(found(high, "clearance", "HT to 0V")->limit->numbers.front().whole.high == doctest::Approx(0.76e-3 * 1.29).epsilon(1e-9).scale(0));
-    CHECK(found(high, "creepage", "HT to 0V")->limit->numbers.front().whole.high == found(basic, "creepage", "HT to 0V")->limit->numbers.front().whole.high);
+    CHECK(found(high, "creepage", "HT to 0V")->limit->numbers.front().whole.high ==
+          found(basic, "creepage", "HT to 0V")->limit->numbers.front().whole.high);
     const audit_result twice = run_gap("reinforced", "0 m");
     CHECK(found(twice, "creepage", "HT to 0V")->limit->numbers.front().whole.high ==
           doctest::Approx(2.0 * found(basic, "creepage", "HT to 0V")->limit->numbers.front().whole.high).epsilon(1e-9).scale(0));

@@ -58,7 +58,8 @@ rc_network random_rc(std::mt19937& r)
     return n;
 }
 
-/// RK4 on node charges would need C to invert; this steps the implicit midpoint rule on C v' = -G v by Eigen-free elimination on one capacitor a node: two-node case only.
+/// RK4 on node charges would need C to invert; this steps the implicit midpoint rule on C v' = -G v by Eigen-free elimination on one capacitor a
+/// node: two-node case only.
 double two_node_reference(double c1, double c2, double bleed, double series, double v1, double v2, double seconds)
 {
     const int steps = 200000;
@@ -103,7 +104,8 @@ TEST_CASE("worked examples of one capacitor and one resistance")
 
 TEST_CASE("worked example A-15: a Thevenin network charges as Kuphaldt tells")
 {
-    // Lessons In Electric Circuits: 20 V, 2 kohm, 500 ohm across C through 3 kohm, 100 uF. Discharging from the difference is the same exponential: tau 45.45455 ms.
+    // Lessons In Electric Circuits: 20 V, 2 kohm, 500 ohm across C through 3 kohm, 100 uF. Discharging from the difference is the same exponential:
+    // tau 45.45455 ms.
     rc_network n;
     n.nodes = 3;
     n.resistances = {{1, 0, at(2000.0)}, {2, 0, at(500.0)}, {1, 2, at(3000.0)}};
@@ -120,7 +122,8 @@ TEST_CASE("worked example A-15: a Thevenin network charges as Kuphaldt tells")
 TEST_CASE("worked example A-14: the charging table as what is still missing")
 {
     // Lessons In Electric Circuits, 15 V, 10 kohm, 100 uF: 5.902 V at 0.5 s ... 14.989 V at 7.25 s.
-    const std::pair<double, double> rows[] = {{0.5, 5.90204}, {1, 9.48181}, {2, 12.96997}, {3, 14.25319}, {4, 14.72527}, {5, 14.89893}, {7.25, 14.98935}};
+    const std::pair<double, double> rows[] = {{0.5, 5.90204}, {1, 9.48181},  {2, 12.96997},   {3, 14.25319},
+                                              {4, 14.72527},  {5, 14.89893}, {7.25, 14.98935}};
     for (const auto& [t, v] : rows) {
         CHECK(15.0 - response(one(10e3, 100e-6, 15.0), 1, 0, t) == doctest::Approx(v).epsilon(1e-6).scale(0));
     }
@@ -151,7 +154,8 @@ TEST_CASE("rebound counts: a pair shorted for a moment rises again and its last 
 
 TEST_CASE("named case: the discharge time behind a series resistor is longest inside its range")
 {
-    // C1 has the bleeder; C2 hangs on it by a series resistance. Small, C2 is quick; large, C2 barely feeds C1; between, C1 stays above its limit longest.
+    // C1 has the bleeder; C2 hangs on it by a series resistance. Small, C2 is quick; large, C2 barely feeds C1; between, C1 stays above its limit
+    // longest.
     rc_network n;
     n.nodes = 3;
     n.resistances = {{1, 0, at(1e6)}, {1, 2, {1e4, 1e8}}};

@@ -1,6 +1,6 @@
 #pragma once
-// An independent solve of one d.c. network of plain numbers: impedance-form rows for every branch in one dense system, by Eigen's full-pivoting LU (a general-purpose library).
-// Shares no code with lib/circuit.
+// An independent solve of one d.c. network of plain numbers: impedance-form rows for every branch in one dense system, by Eigen's full-pivoting LU (a
+// general-purpose library). Shares no code with lib/circuit.
 #include "circuit/network.hpp"
 
 #include <Eigen/Dense>
@@ -23,11 +23,21 @@ inline plain_solution plain_solve(const circuit::network& n)
     for (const auto& b : n.branches) {
         const auto& o = b.options.front();
         switch (o.is) {
-        case circuit::form::resistance: rows.push_back({b.from, b.to, 1.0, o.at.low, 0.0}); break;
-        case circuit::form::clamp: rows.push_back({b.from, b.to, 1.0, 0.0, o.at.low}); break;
-        case circuit::form::current: rows.push_back({b.from, b.to, 0.0, -1.0, o.at.low}); break;
-        case circuit::form::closed: rows.push_back({b.from, b.to, 1.0, 0.0, 0.0}); break;
-        default: rows.push_back({b.from, b.to, 0.0, 1.0, 0.0}); break;
+        case circuit::form::resistance:
+            rows.push_back({b.from, b.to, 1.0, o.at.low, 0.0});
+            break;
+        case circuit::form::clamp:
+            rows.push_back({b.from, b.to, 1.0, 0.0, o.at.low});
+            break;
+        case circuit::form::current:
+            rows.push_back({b.from, b.to, 0.0, -1.0, o.at.low});
+            break;
+        case circuit::form::closed:
+            rows.push_back({b.from, b.to, 1.0, 0.0, 0.0});
+            break;
+        default:
+            rows.push_back({b.from, b.to, 0.0, 1.0, 0.0});
+            break;
         }
     }
     for (const auto& t : n.tracks) {

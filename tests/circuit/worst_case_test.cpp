@@ -294,11 +294,13 @@ TEST_CASE("feedback that one end of the trimmer takes away is told as lost")
 
 TEST_CASE("published: loaded dividers with bleeder")
 {
-    // Marine Institute electrotechnology assignment 5 question 2: 386 V, 1.3 kohm in series, load 32 mA at 210 V; bleeder 2031.25 ohm takes 21.711 W.
+    // Marine Institute electrotechnology assignment 5 question 2: 386 V, 1.3 kohm in series, load 32 mA at 210 V; bleeder 2031.25 ohm
+    // takes 21.711 W.
     network n;
     n.nodes = 3;
     n.sources.push_back({1, 0, {386.0, 386.0}});
-    n.branches = {{1, 2, {{form::resistance, {1300.0, 1300.0}}}}, {2, 0, {{form::resistance, {2031.25, 2031.25}}}}, {2, 0, {{form::current, {0.032, 0.032}}}}};
+    n.branches = {
+        {1, 2, {{form::resistance, {1300.0, 1300.0}}}}, {2, 0, {{form::resistance, {2031.25, 2031.25}}}}, {2, 0, {{form::current, {0.032, 0.032}}}}};
     const solution s = solve(n);
     CHECK(s.voltage[2][0].high == doctest::Approx(210.0).epsilon(1e-4).scale(0));
     CHECK(std::round(s.power[1].high * 10.0) / 10.0 == 21.7);

@@ -22,7 +22,7 @@ const row rows[] = {
     {"label = yes\n", "t:1:9: 'yes' is no value here: write true or false, or quote a word\n    label = yes\n            ^\n"},
     {"a = \"12 V\n", "t:1:5: the closing quote is missing on this line\n    a = \"12 V\n        ^\n"},
     {"\xce\xa9 = 5\n", "t:1:1: a character beyond ASCII outside quotes: quote the value or key, like \"4.7 \xc2\xb5"
-                      "F\"\n    \xce\xa9 = 5\n    ^\n"},
+                       "F\"\n    \xce\xa9 = 5\n    ^\n"},
     {"a = 1\na = 2\n", "t:2:1: written twice: a key or table stands once\n    a = 2\n    ^\nt:1:1: also here:\n    a = 1\n    ^\n"},
     {"a = nan\n", "t:1:5: nan and inf are no values here\n    a = nan\n        ^\n"},
     {"a = 2024-01-01\n", "t:1:5: dates and times are no values here: quote the text\n    a = 2024-01-01\n        ^\n"},
@@ -65,8 +65,9 @@ TEST_CASE("places and document order")
 
 TEST_CASE("what must not be given to the parser is refused before")
 {
-    for (const char* text : {"[#", "[[=", "[[[a]]]", "a = [ } ]", "a = \"\"\"x \\\n\xc2\xb5"
-                                                                  "F\"\"\"",
+    for (const char* text : {"[#", "[[=", "[[[a]]]", "a = [ } ]",
+                             "a = \"\"\"x \\\n\xc2\xb5"
+                             "F\"\"\"",
                              "[\xc3\xa9]", "a = [[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[[1]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]]"}) {
         CAPTURE(text);
         CHECK(read_document(text, "t").complaints.size() == 1);

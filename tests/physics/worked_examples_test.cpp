@@ -1,4 +1,5 @@
-// Published worked examples: exact value to 1e-6, and the printed value at its rounding. Each row names its source; numbers A-xx are the project's own list.
+// Published worked examples: exact value to 1e-6, and the printed value at its rounding. Each row names its source; numbers A-xx are the project's
+// own list.
 #include "physics/limits.hpp"
 #include "physics/storage.hpp"
 
@@ -11,10 +12,22 @@ using namespace onehand::physics;
 
 namespace {
 
-volt V(double x) { return volt::from_value(x); }
-ohm R(double x) { return ohm::from_value(x); }
-farad C(double x) { return farad::from_value(x); }
-second S(double x) { return second::from_value(x); }
+volt V(double x)
+{
+    return volt::from_value(x);
+}
+ohm R(double x)
+{
+    return ohm::from_value(x);
+}
+farad C(double x)
+{
+    return farad::from_value(x);
+}
+second S(double x)
+{
+    return second::from_value(x);
+}
 
 struct row {
     const char* source;
@@ -41,9 +54,12 @@ TEST_CASE("energy and charge")
         {"A-21 University Physics 8.3: 12 uF at 4 V", stored_energy(C(12e-6), V(4)).value(), 96e-6, 96e-6, 1e-6},
         {"A-21 University Physics 8.3: 2 uF at 8 V", stored_energy(C(2e-6), V(8)).value(), 64e-6, 64e-6, 1e-6},
         {"A-19 Bird ch 6 ex 13: 3, 6 and 12 uF in series", in_series(in_series(C(3e-6), C(6e-6)), C(12e-6)).value(), 1.71428571e-6, 1.714e-6, 1e-9},
-        {"A-19 Bird ch 6 ex 13: charge at 350 V", stored_charge(in_series(in_series(C(3e-6), C(6e-6)), C(12e-6)), V(350)).value(), 0.6e-3, 0.6e-3, 0.1e-3},
-        {"A-20 Bird ch 6 ex 2: 4 A for 3 ms into 20 uF is 600 V", constant_current_time(C(20e-6), V(600), V(0), ampere::from_value(4)).value(), 3e-3, 3e-3, 1e-3},
-        {"A-34 University Physics 10.6: 500 J in 10 A for 5 ms", pulse_voltage(joule::from_value(500), coulomb::from_value(0.05))->value(), 10e3, 10e3, 100},
+        {"A-19 Bird ch 6 ex 13: charge at 350 V", stored_charge(in_series(in_series(C(3e-6), C(6e-6)), C(12e-6)), V(350)).value(), 0.6e-3, 0.6e-3,
+         0.1e-3},
+        {"A-20 Bird ch 6 ex 2: 4 A for 3 ms into 20 uF is 600 V", constant_current_time(C(20e-6), V(600), V(0), ampere::from_value(4)).value(), 3e-3,
+         3e-3, 1e-3},
+        {"A-34 University Physics 10.6: 500 J in 10 A for 5 ms", pulse_voltage(joule::from_value(500), coulomb::from_value(0.05))->value(), 10e3,
+         10e3, 100},
     };
     for (const row& r : rows) {
         check(r);
@@ -57,7 +73,8 @@ TEST_CASE("times")
     const row rows[] = {
         {"A-10 University Physics 10.5: relaxation oscillator, 101 ohm, 50 mF, 100 V, strikes at 80 V",
          time_to_voltage(R(101), C(50e-3), V(100), V(20))->value(), 8.127661, 8.13, 0.01},
-        {"A-11 College Physics 21.6: 8 uF, 1 kohm, 10 kV to 500 V", time_to_voltage(R(1000), C(8e-6), V(10e3), V(500))->value(), 23.96586e-3, 24.0e-3, 0.1e-3},
+        {"A-11 College Physics 21.6: 8 uF, 1 kohm, 10 kV to 500 V", time_to_voltage(R(1000), C(8e-6), V(10e3), V(500))->value(), 23.96586e-3, 24.0e-3,
+         0.1e-3},
         {"A-11 College Physics 21.6: what is left at 24 ms", voltage_after(R(1000), C(8e-6), V(10e3), S(24e-3)).value(), 497.8707, 498, 1},
         {"A-12 College Physics 21.6: bleeder of 250 kohm on 80 uF", time_constant(R(250e3), C(80e-6)).value(), 20, 20.0, 0.1},
         {"A-12 College Physics 21.6: to 0.25 percent", time_to_voltage(R(250e3), C(80e-6), V(100), V(0.25))->value(), 119.8293, 120, 1},
@@ -110,9 +127,11 @@ TEST_CASE("limits")
     CHECK(derated(watt::from_value(1), kelvin::from_value(385.65), full, none).value() == doctest::Approx(0.5).epsilon(1e-12).scale(0));
     CHECK(derated(watt::from_value(1), kelvin::from_value(500), full, none).value() == 0.0);
     // A source of 2 W at 400 V into 2 kohm: 31.62 mA by its power (derived reference).
-    CHECK(body_current(V(400), R(2000), R(0), watt::from_value(2), ampere::from_value(1)).value() == doctest::Approx(31.6228e-3).epsilon(1e-5).scale(0));
+    CHECK(body_current(V(400), R(2000), R(0), watt::from_value(2), ampere::from_value(1)).value() ==
+          doctest::Approx(31.6228e-3).epsilon(1e-5).scale(0));
     // A-35 Boylestad ex 12.18 turned round: 61.53846 W over 2.6 K/W from 40 degC ends at 200 degC.
-    CHECK(heated(kelvin::from_value(313.15), watt::from_value(61.53846), kelvin_per_watt::from_value(2.6)).value() == doctest::Approx(473.15).epsilon(1e-6).scale(0));
+    CHECK(heated(kelvin::from_value(313.15), watt::from_value(61.53846), kelvin_per_watt::from_value(2.6)).value() ==
+          doctest::Approx(473.15).epsilon(1e-6).scale(0));
     // Standard atmosphere: 79.495 kPa at 2000 m, 54.02 kPa at 5000 m.
     CHECK(standard_pressure(metre::from_value(2000)).value() == doctest::Approx(79495).epsilon(1e-4).scale(0));
     CHECK(standard_pressure(metre::from_value(5000)).value() == doctest::Approx(54020).epsilon(1e-4).scale(0));

@@ -33,8 +33,10 @@ std::string refusal(const std::string& name, const std::string& text)
     return all;
 }
 
-const char* const small_table = "title = \"T\"\nsource = { cite = \"practice\", clause = \"-\", basis = \"practice\" }\nconditions = \"none\"\naxis = { name = \"voltage\", unit = \"V\" }\n"
-                                "columns = [{ name = \"a\", unit = \"mm\" }]\ninterpolate = \"none\"\nrows = [[\"1\", \"2\"], [\"3\", \"4\"]]\n[[check]]\nat = \"1 V\"\ncolumn = \"a\"\ngives = \"2 mm\"\n";
+const char* const small_table = "title = \"T\"\nsource = { cite = \"practice\", clause = \"-\", basis = \"practice\" }\nconditions = \"none\"\naxis "
+                                "= { name = \"voltage\", unit = \"V\" }\n"
+                                "columns = [{ name = \"a\", unit = \"mm\" }]\ninterpolate = \"none\"\nrows = [[\"1\", \"2\"], [\"3\", "
+                                "\"4\"]]\n[[check]]\nat = \"1 V\"\ncolumn = \"a\"\ngives = \"2 mm\"\n";
 
 std::string with(const std::string& from, const std::string& to)
 {
@@ -135,10 +137,12 @@ TEST_CASE("loader refusals")
         {with("[\"3\", \"4\"]", "[3, 4]"), "7:21: a row is a list of 2 texts: the axis and one a column"},
         {with("gives = \"2 mm\"\n", ""), "8:1: a check says what it gives, or refused = true"},
         {with("column = \"a\"\n", ""), "8:1: no 'column' here"},
-        {with("conditions = \"none\"", "condition = \"none\""), "1:1: no 'conditions' here || 3:1: unknown key 'condition'; nearest known name: conditions"},
+        {with("conditions = \"none\"", "condition = \"none\""),
+         "1:1: no 'conditions' here || 3:1: unknown key 'condition'; nearest known name: conditions"},
         {with("interpolate = \"none\"", "interpolate = \"none\"\nopen = [\"middle\"]"), "7:8: an open end is low or high"},
         {with("title = \"T\"", "title = 5"), "1:9: 'title' is a text in quotes"},
-        {with("axis = { name = \"voltage\", unit = \"V\" }", "axis = { name = \"voltage\" }"), "4:8: no 'unit' here || 7:10: '1' is no number in  || 7:22: '3' is no number in "},
+        {with("axis = { name = \"voltage\", unit = \"V\" }", "axis = { name = \"voltage\" }"),
+         "4:8: no 'unit' here || 7:10: '1' is no number in  || 7:22: '3' is no number in "},
     };
     for (const auto& [text, wanted] : rows) {
         CAPTURE(text);
@@ -150,11 +154,15 @@ TEST_CASE("loader refusals")
         }
     }
     CHECK(refusal("shop/tables/own.toml", small_table) == "");
-    CHECK(refusal("shop/tables/iec-60664-1-creepage.toml", small_table).find("the id 'iec-60664-1-creepage' is taken by tables/iec-60664-1-creepage.toml") != std::string::npos);
+    CHECK(refusal("shop/tables/iec-60664-1-creepage.toml", small_table)
+              .find("the id 'iec-60664-1-creepage' is taken by tables/iec-60664-1-creepage.toml") != std::string::npos);
     CHECK(refusal("shop/kinds/resistor.toml", "title = \"R\"\n") == "1:1: kind 'resistor' is there already");
-    CHECK(refusal("shop/kinds/gizmo.toml", "title = \"R\"\nvoltage = [\"a\", \"b\"]\n[[written]]\na = \"a\"\nb = \"b\"\n[field.x]\ndimension = \"voltag\"\nmeaning = \"m\"\n") ==
-          "7:13: no dimension 'voltag'");
-    CHECK(refusal("shop/kinds/gizmo.toml", "title = \"R\"\nvoltage = [\"a\", \"b\"]\n[[written]]\na = \"a\"\nb = \"b\"\n[[element]]\nbetween = [\"a\", \"b\"]\nforms = [\"melted\"]\n") ==
+    CHECK(
+        refusal("shop/kinds/gizmo.toml",
+                "title = \"R\"\nvoltage = [\"a\", \"b\"]\n[[written]]\na = \"a\"\nb = \"b\"\n[field.x]\ndimension = \"voltag\"\nmeaning = \"m\"\n") ==
+        "7:13: no dimension 'voltag'");
+    CHECK(refusal("shop/kinds/gizmo.toml", "title = \"R\"\nvoltage = [\"a\", \"b\"]\n[[written]]\na = \"a\"\nb = \"b\"\n[[element]]\nbetween = "
+                                           "[\"a\", \"b\"]\nforms = [\"melted\"]\n") ==
           "8:9: no form 'melted': open, closed, resistance, clamp, current, capacitance, inductance or track");
 }
 

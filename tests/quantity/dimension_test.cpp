@@ -11,9 +11,15 @@ using namespace onehand;
 namespace {
 
 template<class A, class B>
-concept addable = requires(A a, B b) { a + b; };
+concept addable = requires(A a, B b)
+{
+    a + b;
+};
 template<class A, class B>
-concept comparable = requires(A a, B b) { a < b; };
+concept comparable = requires(A a, B b)
+{
+    a < b;
+};
 
 } // namespace
 
@@ -45,8 +51,8 @@ TEST_CASE("the bridge refuses another dimension")
 
 TEST_CASE("every name of a dimension gives it back")
 {
-    for (const char* name : {"voltage", "current", "resistance", "capacitance", "inductance", "time", "frequency", "power", "energy", "charge", "length", "temperature",
-                             "thermal-resistance", "melting-integral", "capacitance-per-length", "ratio"}) {
+    for (const char* name : {"voltage", "current", "resistance", "capacitance", "inductance", "time", "frequency", "power", "energy", "charge",
+                             "length", "temperature", "thermal-resistance", "melting-integral", "capacitance-per-length", "ratio"}) {
         CHECK(dimension_named(name).has_value());
     }
     CHECK_FALSE(dimension_named("voltag").has_value());

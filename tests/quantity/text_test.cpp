@@ -31,8 +31,10 @@ const refused_row refused[] = {
     {"capacitance", "104", 0, "'104' is a bare number, or the three-digit code for 100 nF: write the value with its unit"},
     {"resistance", "472", 0, "'472' is a bare number, or the three-digit code for 4.7 kΩ: write the value with its unit"},
     {"capacitance", "3300mF", 0, "mF is the millifarad: 3300mF is 3.3 F; for microfarads write uF, for farads write F"},
-    {"capacitance", "10M", 2, "'M' on a capacitor is a tolerance letter (20 %) or a multiplier: write the value with its unit, and the tolerance as \"+-20%\""},
-    {"capacitance", "47K", 0, "'K' on a capacitor is a tolerance letter (10 %) or a multiplier: write the value with its unit, and the tolerance as \"+-10%\""},
+    {"capacitance", "10M", 2,
+     "'M' on a capacitor is a tolerance letter (20 %) or a multiplier: write the value with its unit, and the tolerance as \"+-20%\""},
+    {"capacitance", "47K", 0,
+     "'K' on a capacitor is a tolerance letter (10 %) or a multiplier: write the value with its unit, and the tolerance as \"+-10%\""},
     {"voltage", "12", 0, "a bare number: a voltage is due: write it like \"12 V\""},
     {"voltage", "", 0, "empty: a voltage is due: write it like \"12 V\""},
     {"voltage", "   ", 0, "empty: a voltage is due: write it like \"12 V\""},
@@ -156,8 +158,9 @@ TEST_CASE("read and printed")
 
 TEST_CASE("the same number however it is written")
 {
-    const std::pair<const char*, const char*> same[] = {{"0.18 kV", "180 V"}, {"4k7", "4.7 kohm"}, {"4700 ohm", "4.7 k\u03a9"}, {"3u3", "3.3 uF"}, {"3300 nF", "3.3 \u00b5F"},
-                                                        {"0.1 V", "100 mV"}, {"2.4 mm", "2400 um"}, {"5 minutes", "300 s"}};
+    const std::pair<const char*, const char*> same[] = {{"0.18 kV", "180 V"},  {"4k7", "4.7 kohm"},        {"4700 ohm", "4.7 k\u03a9"},
+                                                        {"3u3", "3.3 uF"},     {"3300 nF", "3.3 \u00b5F"}, {"0.1 V", "100 mV"},
+                                                        {"2.4 mm", "2400 um"}, {"5 minutes", "300 s"}};
     const char* dims[] = {"voltage", "resistance", "resistance", "capacitance", "capacitance", "voltage", "length", "time"};
     for (std::size_t i = 0; i < std::size(same); ++i) {
         const auto a = parse_quantity(same[i].first, dim_of(dims[i]));
@@ -183,8 +186,14 @@ TEST_CASE("what is in use and the whole are kept apart")
 TEST_CASE("round trip: what is written reads back to the same spread")
 {
     std::mt19937 r(12345);
-    const dimension dims[] = {dim::voltage, dim::current, dim::resistance, dim::capacitance, dim::inductance, dim::time, dim::frequency, dim::power, dim::energy, dim::charge,
-                              dim::length, dim::thermal_resistance, dim::melting_integral, dim::capacitance_per_length, dim::pressure, dim::none};
+    const dimension dims[] = {dim::voltage,          dim::current,
+                              dim::resistance,       dim::capacitance,
+                              dim::inductance,       dim::time,
+                              dim::frequency,        dim::power,
+                              dim::energy,           dim::charge,
+                              dim::length,           dim::thermal_resistance,
+                              dim::melting_integral, dim::capacitance_per_length,
+                              dim::pressure,         dim::none};
     std::uniform_real_distribution<double> mantissa(-9.999, 9.999);
     std::uniform_int_distribution<int> exponent(-13, 11);
     std::uniform_real_distribution<double> wide(0.0, 0.5);
@@ -193,7 +202,10 @@ TEST_CASE("round trip: what is written reads back to the same spread")
         const double x = mantissa(r) * std::pow(10.0, exponent(r));
         const double t = std::abs(x) * wide(r);
         const double u = std::abs(x) * wide(r);
-        spread s = i % 4 == 0 ? exactly({x, d}) : i % 4 == 1 ? between(d, x - t, x + t) : i % 4 == 2 ? toleranced({x, d}, x - t, x + u) : between(d, x - t, x + t);
+        spread s = i % 4 == 0   ? exactly({x, d})
+                   : i % 4 == 1 ? between(d, x - t, x + t)
+                   : i % 4 == 2 ? toleranced({x, d}, x - t, x + u)
+                                : between(d, x - t, x + t);
         if (i % 4 == 3) {
             s.whole = {s.whole.low - u, s.whole.high + u};
         }

@@ -35,9 +35,11 @@ const loaded_rules& shipped()
     return r;
 }
 
-const char* const shop_rule = "title = \"Own\"\nsubject = \"resistor\"\nstates = [\"running\"]\nprotects = \"part\"\nbears-on = [\"energise\"]\nsignal = \"NOTICE\"\n"
-                              "require = 'abs(voltage) <= limiting-voltage'\nmessage = \"{ref}\"\nwhy = \"w\"\nremedy = \"r\"\nsource = { cite = \"practice\", clause = \"-\", basis = \"practice\" }\n"
-                              "[[example]]\nname = \"x\"\nverdict = \"not-shown\"\ngiven = {}\n";
+const char* const shop_rule =
+    "title = \"Own\"\nsubject = \"resistor\"\nstates = [\"running\"]\nprotects = \"part\"\nbears-on = [\"energise\"]\nsignal = \"NOTICE\"\n"
+    "require = 'abs(voltage) <= limiting-voltage'\nmessage = \"{ref}\"\nwhy = \"w\"\nremedy = \"r\"\nsource = { cite = \"practice\", clause = \"-\", "
+    "basis = \"practice\" }\n"
+    "[[example]]\nname = \"x\"\nverdict = \"not-shown\"\ngiven = {}\n";
 
 std::string refusal(const std::string& from, const std::string& to)
 {
@@ -50,7 +52,8 @@ std::string refusal(const std::string& from, const std::string& to)
     return all;
 }
 
-finding made(const std::string& rule, verdict v, signal_word s, std::vector<std::string> bears, std::vector<std::string> missing = {}, const std::string& change = "none")
+finding made(const std::string& rule, verdict v, signal_word s, std::vector<std::string> bears, std::vector<std::string> missing = {},
+             const std::string& change = "none")
 {
     finding f;
     f.id = f.rule = f.title = rule;
@@ -122,7 +125,8 @@ TEST_CASE("a rule on a numeric limit has an example just either side of it")
         }
         CAPTURE(r.id);
         const auto near = [&](const char* one, const char* two) {
-            return std::any_of(r.examples.begin(), r.examples.end(), [&](const auto& e) { return e.name.find(one) != std::string::npos || e.name.find(two) != std::string::npos; });
+            return std::any_of(r.examples.begin(), r.examples.end(),
+                               [&](const auto& e) { return e.name.find(one) != std::string::npos || e.name.find(two) != std::string::npos; });
         };
         CHECK(near("just", "hot, just"));
     }
@@ -131,8 +135,8 @@ TEST_CASE("a rule on a numeric limit has an example just either side of it")
 TEST_CASE("a broken shop rule is refused with place and column")
 {
     CHECK(refusal("title", "title") == "");
-    CHECK(refusal("limiting-voltage'", "limiting-voltag'") == "7:29: a resistor has no 'limiting-voltag'; nearest known name: limiting-voltage");
-    CHECK(refusal("<= limiting-voltage", "<= 5 A") == "7:26: a voltage on the left, a current on the right");
+    CHECK(refusal("limiting-voltage'", "limiting-voltag'") == "7:28: a resistor has no 'limiting-voltag'; nearest known name: limiting-voltage");
+    CHECK(refusal("<= limiting-voltage", "<= 5 A") == "7:25: a voltage on the left, a current on the right");
     CHECK(refusal("\"resistor\"", "\"resistr\"").find("2:11: no subject 'resistr'; nearest known name: resistor") == 0);
     CHECK(refusal("[\"running\"]", "[\"walking\"]") == "3:11: no state 'walking': start-up, running, no-load, standby or switched-off");
     CHECK(refusal("\"part\"", "\"cat\"") == "4:12: 'protects' is part or person");
@@ -143,8 +147,10 @@ TEST_CASE("a broken shop rule is refused with place and column")
     CHECK(refusal("cite = \"practice\"", "cite = \"practise\"") == "11:10: no source 'practise' in sources.toml; nearest known name: practice");
     CHECK(refusal("why = \"w\"\n", "") == "1:1: no 'why' in this rule");
     CHECK(refusal("why = ", "wy = ").find("unknown key 'wy'; nearest known name: why") != std::string::npos);
-    CHECK(refusal("require = 'abs(voltage) <= limiting-voltage'", "require = 'abs(voltage)'") == "7:11: 'require' is neither true nor false: compare something");
-    CHECK(refusal("require = 'abs(voltage) <= limiting-voltage'", "require = 'voltage > 1 V and voltage < 5 V'") == "7:11: 'require' is one comparison: the value left, its limit right");
+    CHECK(refusal("require = 'abs(voltage) <= limiting-voltage'", "require = 'abs(voltage)'") ==
+          "7:11: 'require' is neither true nor false: compare something");
+    CHECK(refusal("require = 'abs(voltage) <= limiting-voltage'", "require = 'voltage > 1 V and voltage < 5 V'") ==
+          "7:11: 'require' is one comparison: the value left, its limit right");
     CHECK(refusal("title = \"Own\"", "title = \"Own\"\nnames = \"no-such-rule\"") == "1:1: 'names' speaks of a rule that is not there: no-such-rule");
 }
 
@@ -168,7 +174,7 @@ TEST_CASE("the two conclusions")
         {{made("a", v::not_shown, s::caution, e, {"x"})}, "conditional", "only-after"},
         {{made("a", v::not_shown, s::warning, e, {"x"})}, "hold", "only-after"},
         {{made("a", v::marginal, s::danger, e)}, "hold", "only-after"},
-        {{made("a", v::not_shown, s::warning, r, {"C4.value"})}, "no-objection", "only-after"},
+        {{made("a", v::not_shown, s::warning, r, {"C4.value (capacitance)"})}, "no-objection", "only-after"},
         {{made("a", v::not_shown, s::warning, r, {"input.isolated"})}, "no-objection", "hold"},
         {{made("a", v::fail, s::caution, e, {}, "R7 open")}, "conditional", "only-after"},
         {{made("a", v::fail, s::warning, e, {}, "R7 open")}, "hold", "only-after"},
@@ -178,7 +184,7 @@ TEST_CASE("the two conclusions")
         CHECK(c.energise == x.energise);
         CHECK(c.reach_in == x.reach_in);
     }
-    const conclusions c = conclude({made("a", v::not_shown, s::warning, r, {"C4.value"})}, true);
+    const conclusions c = conclude({made("a", v::not_shown, s::warning, r, {"C4.value (capacitance)"})}, true);
     CHECK_FALSE(c.time_known); // no time can be told: measure
     CHECK(c.conditions.size() == 1);
     CHECK(conclude({made("a", v::fail, s::danger, e)}, true).because == std::vector<std::string>{"a"});

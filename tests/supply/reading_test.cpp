@@ -66,7 +66,9 @@ TEST_CASE("parts written as tables or inline are the same")
 
 TEST_CASE("a measured value stands for the marked one and keeps its place")
 {
-    const supply s = read("[supply]\nreturn = \"0V\"\n[input]\nnets = [\"VIN\", \"0V\"]\n[capacitor]\nC1 = { nets = [\"VIN\", \"0V\"], value = \"3u3 +-20%\", measured = \"3.05 uF +-2%\" }\n").built;
+    const supply s = read("[supply]\nreturn = \"0V\"\n[input]\nnets = [\"VIN\", \"0V\"]\n[capacitor]\nC1 = { nets = [\"VIN\", \"0V\"], value = \"3u3 "
+                          "+-20%\", measured = \"3.05 uF +-2%\" }\n")
+                         .built;
     const field* f = s.parts[0].find("value");
     CHECK(*f->number()->nominal == doctest::Approx(3.05e-6).epsilon(1e-12).scale(0));
     REQUIRE(f->nominal_at.has_value());
