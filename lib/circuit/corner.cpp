@@ -11,62 +11,12 @@ namespace onehand::circuit {
 namespace {
 
 constexpr double least_ohms = 1e-3;  // stands for a short where a resistance is unknown
-constexpr double most_ohms = 1e15;   // stands for an open
 constexpr double closed_ohms = 1e-6; // a closed alternative
 constexpr std::array<double, 3> places{0.25, 0.5, 0.75};
 
 std::size_t at(int i)
 {
     return static_cast<std::size_t>(i);
-}
-
-double usable(double ohms)
-{
-    return std::clamp(ohms, least_ohms, most_ohms);
-}
-
-std::vector<branch_state> states_of(const branch& b)
-{
-    std::vector<branch_state> list;
-    for (const option& o : b.options) {
-        if (o.is != form::resistance || o.at.point()) {
-            list.push_back({o.is, usable(o.at.low), o.at, ' '});
-            continue;
-        }
-        list.push_back({o.is, usable(o.at.low), o.at, 'l'});
-        list.push_back({o.is, usable(o.at.high), o.at, 'h'});
-    }
-    if (list.empty()) {
-        list.push_back({form::open, 0.0, {}, ' '});
-    }
-    return list;
-}
-
-void list_figures(component_plan& p)
-{
-    using of = component_plan::figure::of;
-    const auto& clusters = p.part->clusters;
-    for (std::size_t i = 0; i < clusters.size(); ++i) {
-        p.figures.push_back({of::node, clusters[i], 0});
-        for (std::size_t j = i + 1; j < clusters.size(); ++j) {
-            p.figures.push_back({of::pair, clusters[i], clusters[j]});
-        }
-        if (p.part->has_sense) {
-            for (int h = 0; h < p.red->clusters; ++h) {
-                if (p.red->potential[at(h)]) {
-                    p.figures.push_back({of::pair, h, clusters[i]});
-                }
-            }
-        }
-    }
-    for (std::size_t i = 0; i < p.part->branches.size(); ++i) {
-        p.figures.push_back({of::across, static_cast<int>(i), 0});
-        p.figures.push_back({of::through, static_cast<int>(i), 0});
-    }
-    for (std::size_t i = 0; i < p.part->tracks.size(); ++i) {
-        p.figures.push_back({of::section_1, static_cast<int>(i), 0});
-        p.figures.push_back({of::section_2, static_cast<int>(i), 0});
-    }
 }
 
 /// The linear system of one corner at one wiper position.
@@ -361,79 +311,6 @@ bool resolve_output(const component_plan& p, const system& s, corner_sample& sam
 
 } // namespace
 
-component_plan plan_for(const network& n, const reduced& r, const component& c)
-{
-    component_plan p;
-    p.net = &n;
-    p.red = &r;
-    p.part = &c;
-    p.column_box = r.sources;
-    for (const int b : c.branches) {
-        p.states.push_back(states_of(n.branches[at(b)]));
-        box span; // hull over the clamp and current options
-        bool any = false;
-        for (const option& o : n.branches[at(b)].options) {
-            if (o.is == form::clamp || o.is == form::current) {
-                span = any ? box{std::min(span.low, o.at.low), std::max(span.high, o.at.high)} : o.at;
-                any = true;
-            }
-        }
-        p.column_box.push_back(span);
-    }
-    for (std::size_t i = 0; i < c.tracks.size(); ++i) {
-        const track& t = n.tracks[at(c.tracks[i])];
-        p.track_ohms.push_back(t.resistance.point() ? std::vector<double>{usable(t.resistance.low)}
-                                                    : std::vector<double>{usable(t.resistance.low), usable(t.resistance.high)});
-        if (i > 0) {
-            std::vector<double> list;
-            for (int k = 0; k <= 8; ++k) {
-                list.push_back(std::clamp(t.position.low + (t.position.high - t.position.low) * k / 8.0, 1e-6, 1.0 - 1e-6));
-            }
-            p.track_places.push_back(std::move(list));
-        }
-    }
-    p.threshold_column = static_cast<int>(p.column_box.size());
-    p.column_box.push_back(n.held ? n.held->threshold : box{});
-    p.column_box.push_back(n.held ? n.held->bias : box{});
-    p.columns = static_cast<int>(p.column_box.size());
-    list_figures(p);
-    return p;
-}
-
-std::vector<int> radices(const component_plan& p)
-{
-    std::vector<int> list;
-    for (const auto& s : p.states) {
-        list.push_back(static_cast<int>(s.size()));
-    }
-    for (const auto& o : p.track_ohms) {
-        list.push_back(static_cast<int>(o.size()));
-    }
-    for (const auto& o : p.track_places) {
-        list.push_back(static_cast<int>(o.size()));
-    }
-    return list;
-}
-
-std::size_t component_plan::corners() const
-{
-    std::size_t product = 1;
-    for (const int r : radices(*this)) {
-        product = product > (std::size_t{1} << 40U) ? product : product * at(r);
-    }
-    return product;
-}
-
-choice choice_at(const component_plan& p, std::size_t number)
-{
-    choice c;
-    for (const int r : radices(p)) {
-        c.push_back(static_cast<int>(number % at(r)));
-        number /= at(r);
-    }
-    return c;
-}
-
 corner solve_corner(const component_plan& p, const choice& chosen)
 {
     corner out;
@@ -459,8 +336,8 @@ corner solve_corner(const component_plan& p, const choice& chosen)
     return out;
 }
 
-travel_extreme over_travel(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms,
-                           const std::vector<double>& columns, double from, double to)
+travel_form::travel_form(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms,
+                         const std::vector<double>& columns)
 {
     std::array<double, 3> value{};
     for (std::size_t i = 0; i < samples.size(); ++i) {
@@ -469,21 +346,37 @@ travel_extreme over_travel(const std::vector<corner_sample>& samples, const std:
         }
     }
     if (samples.size() == 1) {
-        return {value[0], value[0], from, from, false};
+        numerator_ = {value[0], 0.0, 0.0};
+        return;
     }
-    // Numerator and denominator are quadratics of the position: both follow from three points (Lagrange), the extremes from N'D = N D'.
     const auto quadratic = [](double y0, double y1, double y2) {
-        // through (1/4, y0), (1/2, y1), (3/4, y2)
+        // through (1/4, y0), (1/2, y1), (3/4, y2), Lagrange
         const double c2 = 8.0 * (y0 - 2.0 * y1 + y2);
         const double c1 = 2.0 * (y2 - y0) - c2;
         return std::array<double, 3>{y1 - 0.5 * c1 - 0.25 * c2, c1, c2};
     };
     const double scale = 1.0 / samples[1].weight;
-    const auto d = quadratic(samples[0].weight * scale, 1.0, samples[2].weight * scale);
-    const auto n = quadratic(value[0] * samples[0].weight * scale, value[1], value[2] * samples[2].weight * scale);
-    const auto eval = [](const std::array<double, 3>& q, double x) { return q[0] + x * (q[1] + x * q[2]); };
+    denominator_ = quadratic(samples[0].weight * scale, 1.0, samples[2].weight * scale);
+    numerator_ = quadratic(value[0] * samples[0].weight * scale, value[1], value[2] * samples[2].weight * scale);
+    moves_ = true;
+}
+
+double travel_form::at(double place) const
+{
+    const auto eval = [place](const std::array<double, 3>& q) { return q[0] + place * (q[1] + place * q[2]); };
+    return eval(numerator_) / eval(denominator_);
+}
+
+travel_extreme travel_form::over(double from, double to) const
+{
+    if (!moves_) {
+        return {numerator_[0], numerator_[0], from, from, false};
+    }
+    const auto& n = numerator_;
+    const auto& d = denominator_;
     std::array<double, 4> candidates{from, to, from, from};
     std::size_t count = 2;
+    // N'D = N D'
     const double a = n[2] * d[1] - n[1] * d[2];
     const double b = 2.0 * (n[2] * d[0] - n[0] * d[2]);
     const double c = n[1] * d[0] - n[0] * d[1];
@@ -498,13 +391,12 @@ travel_extreme over_travel(const std::vector<corner_sample>& samples, const std:
     }
     travel_extreme out{std::numeric_limits<double>::infinity(), -std::numeric_limits<double>::infinity(), from, from, false};
     // A root of the denominator inside the travel is a pole: for the held output, feedback lost.
-    const double d_from = eval(d, from);
-    const double d_to = eval(d, to);
+    const auto below = [&d](double x) { return d[0] + x * (d[1] + x * d[2]); };
     const double turn = d[2] != 0.0 ? -0.5 * d[1] / d[2] : from;
-    const double d_turn = turn > from && turn < to ? eval(d, turn) : d_from;
-    out.pole = std::min({d_from, d_to, d_turn}) <= 1e-12;
+    const double d_turn = turn > from && turn < to ? below(turn) : below(from);
+    out.pole = std::min({below(from), below(to), d_turn}) <= 1e-12;
     for (std::size_t i = 0; i < count; ++i) {
-        const double y = eval(n, candidates[i]) / eval(d, candidates[i]);
+        const double y = at(candidates[i]);
         if (y < out.low) {
             out.low = y;
             out.at_low = candidates[i];

@@ -3,7 +3,18 @@
 // in its travel, three samples from which the exact rational function of the wiper's position is rebuilt. Inside the room only.
 #include "circuit/reduced.hpp"
 
+#include <array>
+
 namespace onehand::circuit {
+
+inline constexpr double least_ohms = 1e-3; // stands for a short where a resistance is unknown
+inline constexpr double most_ohms = 1e15;  // stands for an open
+
+/// A resistance as it can be solved with.
+inline double usable(double ohms)
+{
+    return ohms < least_ohms ? least_ohms : ohms > most_ohms ? most_ohms : ohms;
+}
 
 /// A state of one branch at a corner.
 struct branch_state {
@@ -65,7 +76,16 @@ struct travel_extreme {
     double at_high = 0.0;
     bool pole = false; // the denominator vanishes inside
 };
-travel_extreme over_travel(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms,
-                           const std::vector<double>& columns, double from, double to);
+class travel_form {
+public:
+    travel_form(const std::vector<corner_sample>& samples, const std::vector<const std::vector<double>*>& forms, const std::vector<double>& columns);
+    double at(double place) const;
+    travel_extreme over(double from, double to) const;
+
+private:
+    std::array<double, 3> numerator_{};
+    std::array<double, 3> denominator_{1.0, 0.0, 0.0};
+    bool moves_ = false;
+};
 
 } // namespace onehand::circuit

@@ -66,6 +66,7 @@ public:
         const bool tracked = !p.part->tracks.empty();
         from_ = tracked ? p.net->tracks[at(p.part->tracks[0])].position.low : 0.0;
         to_ = tracked ? p.net->tracks[at(p.part->tracks[0])].position.high : 0.0;
+        places_ = tracked ? places() : std::vector<double>{};
         out_.searched = p.part->tracks.size() > 1 || p.corners() > most_corners;
         out_.margin = out_.searched ? search_margin : 0.0;
     }
@@ -127,7 +128,7 @@ private:
         for (const corner_sample& s : c.samples) {
             forms.push_back(&s.form[figure]);
         }
-        return over_travel(c.samples, forms, columns, from_, to_);
+        return travel_form(c.samples, forms, columns).over(from_, to_);
     }
 
     void visit(const choice& chosen, at_corner* keep)
@@ -191,7 +192,7 @@ private:
         for (const corner_sample& s : c.samples) {
             forms.push_back(&s.output);
         }
-        const travel_extreme e = over_travel(c.samples, forms, columns, from_, to_);
+        const travel_extreme e = travel_form(c.samples, forms, columns).over(from_, to_);
         if (e.pole || !(e.low > 0.0) || !std::isfinite(e.high)) {
             out_.lost = true;
             return;
@@ -267,20 +268,27 @@ private:
             }
             const auto track_at = at(p_.figures[f].a);
             const double ohms = p_.track_ohms[track_at][at(chosen[p_.states.size() + track_at])];
-            for (const double place : places()) {
-                std::vector<const std::vector<double>*> one;
-                std::vector<const std::vector<double>*> two;
-                for (const corner_sample& s : c.samples) {
-                    one.push_back(&s.form[f]);
-                    two.push_back(&s.form[f + 1]);
-                }
-                const double i1 = over_travel(c.samples, one, columns, place, place).low;
-                const double i2 = over_travel(c.samples, two, columns, place, place).low;
-                const double share = track_at == 0 ? place : 0.5;
-                const double watts = i1 * i1 * share * ohms + i2 * i2 * (1.0 - share) * ohms;
+            std::vector<const std::vector<double>*> one;
+            std::vector<const std::vector<double>*> two;
+            for (const corner_sample& s : c.samples) {
+                one.push_back(&s.form[f]);
+                two.push_back(&s.form[f + 1]);
+            }
+            const travel_form first(c.samples, one, columns);
+            const travel_form second(c.samples, two, columns);
+            for (const double place : places_) {
+                const double share = track_at == 0 ? place : share_of(chosen, track_at);
+                const double watts = ohms * (std::pow(first.at(place), 2) * share + std::pow(second.at(place), 2) * (1.0 - share));
                 widen(out_.track_power[track_at], watts, watts);
             }
         }
+    }
+
+    /// Where a further track's wiper stands at this corner.
+    double share_of(const choice& chosen, std::size_t track_at) const
+    {
+        const std::size_t digit = p_.states.size() + p_.track_ohms.size() + track_at - 1;
+        return p_.track_places[track_at - 1][at(chosen[digit])];
     }
 
     /// A resistance's own power peaks where it matches what feeds it: 1/V is affine in its conductance, so the peak follows from both ends of its
@@ -390,6 +398,7 @@ private:
     sweep_result out_;
     double from_ = 0.0;
     double to_ = 0.0;
+    std::vector<double> places_;
     std::vector<at_corner> voltages_;
     std::vector<figure_extreme> signs_;
     std::set<choice> seen_;           // search only

@@ -15,7 +15,8 @@ constexpr std::size_t width = 80;
 
 std::string lower(std::string text)
 {
-    std::transform(text.begin(), text.end(), text.begin(), [](unsigned char c) { return static_cast<char>(std::tolower(c)); });
+    // "IEC 60664-1" and "iec-60664-1" are the same word.
+    std::transform(text.begin(), text.end(), text.begin(), [](unsigned char c) { return c == ' ' ? '-' : static_cast<char>(std::tolower(c)); });
     return text;
 }
 

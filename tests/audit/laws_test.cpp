@@ -77,7 +77,7 @@ std::vector<std::string> cuts(const std::string& text)
 
 } // namespace
 
-TEST_CASE("law 1: taking a value away never makes a pass nor a better end state")
+TEST_CASE("law 1: taking a value away never makes a pass nor a better end state" * doctest::test_suite("long"))
 {
     int tried = 0;
     for (const char* name : names) {

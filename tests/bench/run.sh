@@ -1,0 +1,24 @@
+#!/usr/bin/env bash
+# Whole-process times as ratios, side by side in one run: audit of a sample over a process that only reads the same file (kinds list as the floor of loading), and instructions by stage.
+set -euo pipefail
+cd "$(dirname "$0")/../.."
+program=${1:-build/cli/onehand}
+runs=${2:-25}
+median() {
+    local i
+    for ((i = 0; i < runs; ++i)); do
+        local from to
+        from=$(date +%s%N)
+        "$@" >/dev/null 2>&1 || true
+        to=$(date +%s%N)
+        echo $(((to - from) / 1000))
+    done | sort -n | sed -n "$((runs / 2 + 1))p"
+}
+cmake -S . -B build/bench -G Ninja -DONEHAND_BENCH=ON -DCMAKE_BUILD_TYPE=Release >/dev/null
+cmake --build build/bench --target parse_only onehand
+for sample in samples/*.toml; do
+    parse=$(median build/bench/tests/bench/parse_only "$sample")
+    audit=$(median build/bench/cli/onehand audit "$sample")
+    kinds=$(median build/bench/cli/onehand kinds)
+    echo "$sample: audit/parse $(echo "scale=1; $audit/$parse" | bc), rules loaded/parse $(echo "scale=1; $kinds/$parse" | bc)"
+done
