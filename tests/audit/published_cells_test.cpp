@@ -1,5 +1,6 @@
 // Published tables through the whole chain: a description at each printed row, the limit that `audit` judges by.
-// IEC 62368-1 table 5 (two national texts of 2014 and 2018); IEC 60664-1 creepage (terminal maker's reproduction, national standard, transcription).
+// IEC 62368-1 table 5 (two national texts of 2014 and 2018); IEC 60664-1 creepage (terminal maker's reproduction, national standard, copied-out
+// tables).
 #include "help.hpp"
 
 #include "quantity/text.hpp"

@@ -1,5 +1,5 @@
 // IEC 60664-1 creepage (table F.5 of 2020, F.4 of 2007) cell by cell. The figures below were typed from the reproductions that agree: a terminal
-// maker's table (10 V to 2000 V), a national welding standard (630 V to 10 kV) and a transcription of all rows.
+// maker's table (10 V to 2000 V), a national welding standard (630 V to 10 kV) and copied-out tables of all rows.
 #include "published/embedded.hpp"
 #include "published/library.hpp"
 

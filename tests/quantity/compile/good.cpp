@@ -1,2 +1,5 @@
 #include "physics/storage.hpp"
-onehand::joule energy(onehand::farad c, onehand::volt u) { return onehand::physics::stored_energy(c, u); }
+onehand::joule energy(onehand::farad c, onehand::volt u)
+{
+    return onehand::physics::stored_energy(c, u);
+}
