@@ -57,10 +57,13 @@ std::string greatest(const value& v, int digits)
         return "unknown";
     }
     double top = v.numbers.front().whole.high;
+    double bottom = v.numbers.front().whole.low;
     for (const spread& s : v.numbers) {
         top = std::max(top, s.whole.high);
+        bottom = std::max(bottom, s.whole.low);
     }
-    return std::isfinite(top) ? format_quantity({top, v.numbers.front().dim}, digits) : "unknown";
+    const dimension d = v.numbers.front().dim;
+    return std::isfinite(top) ? format_quantity({top, d}, digits) : bottom > 0.0 ? "over " + format_quantity({bottom, d}, digits) : "unknown";
 }
 
 std::string at_place(const place& p)

@@ -84,6 +84,17 @@ void paths_of_pair(stored_item& item, const std::vector<const charged_capacitor*
     }
 }
 
+/// What is not known of one capacitor leaves the others' share certain: it adds anything from nothing up.
+value at_least_nothing(const value& v, const dimension& d)
+{
+    if (!v.numbers.empty()) {
+        return v;
+    }
+    value out = number(between(d, 0.0, unbounded));
+    out.missing = v.missing;
+    return out;
+}
+
 /// Capacitance that would hold the same charge at the pair's voltage, so that one table serves any network.
 value equivalent_capacitance(const value& charge, const value& voltage)
 {
@@ -135,8 +146,8 @@ void solved_supply::list_stored()
         item.charge = number(exactly({0.0, dim::charge}));
         for (const charged_capacitor* c : caps) {
             item.parts.push_back(c->ref);
-            item.energy = sum(item.energy, c->energy);
-            item.charge = sum(item.charge, c->charge);
+            item.energy = sum(item.energy, at_least_nothing(c->energy, dim::energy));
+            item.charge = sum(item.charge, at_least_nothing(c->charge, dim::charge));
         }
         item.energy.shown.formula = "sum of C U^2 / 2 of all that can reach the pair";
         item.charge.shown.formula = "sum of C U of all that can reach the pair";

@@ -67,15 +67,17 @@ value highest(const std::vector<const value*>& all, dimension d)
     value out;
     double in_use = 0.0;
     double whole = 0.0;
+    double certain = 0.0; // what the greatest is at the least
     for (const value* v : all) {
         out.missing.insert(out.missing.end(), v->missing.begin(), v->missing.end());
         out.assumed.insert(out.assumed.end(), v->assumed.begin(), v->assumed.end());
         for (const spread& s : v->numbers) {
             in_use = std::max({in_use, std::abs(s.in_use.low), std::abs(s.in_use.high)});
             whole = std::max({whole, std::abs(s.whole.low), std::abs(s.whole.high)});
+            certain = std::max(certain, s.whole.low);
         }
     }
-    out.numbers.push_back({d, {0.0, in_use}, {0.0, whole}, std::nullopt});
+    out.numbers.push_back({d, {certain, in_use}, {certain, whole}, std::nullopt});
     return out;
 }
 

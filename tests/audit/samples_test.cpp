@@ -66,8 +66,11 @@ TEST_CASE("the least description is mostly not-shown")
         not_shown += f.judged == verdict::not_shown ? 1 : 0;
         pass += f.judged == verdict::pass ? 1 : 0;
     }
-    CHECK(not_shown > 8);
+    CHECK(not_shown > 6);
     CHECK(pass <= 4);
+    // A certain failure stays one although the module's inside is unknown: 10 uF at 250 V and nothing discharges it.
+    CHECK(found(*o.result, "bleeder-present", "HT to 0V")->judged == verdict::fail);
+    CHECK(found(*o.result, "discharge-cover-off", "HT to 0V")->judged == verdict::fail);
 }
 
 TEST_CASE("a negative rail and the capacitor fitted the wrong way round")
