@@ -92,6 +92,15 @@ void sort_by_place(std::vector<complaint>& list)
     std::stable_sort(list.begin(), list.end(), [](const complaint& a, const complaint& b) { return before(a.at, b.at); });
 }
 
+std::string listed(const std::vector<std::string>& words, const char* between)
+{
+    std::string text;
+    for (const std::string& w : words) {
+        text += (text.empty() ? "" : between) + w;
+    }
+    return text;
+}
+
 std::string nearest_name(const std::string& word, const std::vector<std::string>& known)
 {
     std::string best;

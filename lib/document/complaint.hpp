@@ -29,6 +29,9 @@ bool any_mistake(const std::vector<complaint>& list);
 /// Stable sort by place.
 void sort_by_place(std::vector<complaint>& list);
 
+/// "a, b, c".
+std::string listed(const std::vector<std::string>& words, const char* between = ", ");
+
 /// The known name with the least edit distance to `word` (ties: first), if it is near enough to be meant (distance <= 1 + length/4); else empty.
 std::string nearest_name(const std::string& word, const std::vector<std::string>& known);
 

@@ -25,15 +25,6 @@ bool has(const std::string& text, const std::string& word)
     return lower(text).find(lower(word)) != std::string::npos;
 }
 
-std::string listed(const std::vector<std::string>& words)
-{
-    std::string text;
-    for (const std::string& w : words) {
-        text += (text.empty() ? "" : ", ") + w;
-    }
-    return text;
-}
-
 std::string item(const std::string& lead, const std::string& words)
 {
     std::string out;

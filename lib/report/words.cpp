@@ -8,44 +8,11 @@
 
 namespace onehand {
 
-namespace {
-
-std::string joined(const std::vector<std::string>& words)
-{
-    std::string text;
-    for (const std::string& w : words) {
-        text += (text.empty() ? "" : ", ") + w;
-    }
-    return text;
-}
-
-} // namespace
-
 std::string figure(const value& v, int digits)
 {
-    if (v.never) {
-        return "never";
-    }
-    if (v.holds == value::type::truth) {
-        return v.truth ? (*v.truth ? "yes" : "no") : "unknown";
-    }
-    if (v.holds == value::type::choice) {
-        return v.choice.empty() ? "unknown" : v.choice;
-    }
-    std::string text;
-    if (v.numbers.empty()) {
-        text = "unknown";
-    } else if (v.numbers.size() == 1) {
-        text = format_spread(v.numbers.front(), digits);
-    } else {
-        spread all = v.numbers.front();
-        for (const spread& s : v.numbers) {
-            all = hull(all, s);
-        }
-        all.nominal.reset();
-        text = "one of " + format_spread(all, digits);
-    }
-    return v.missing.empty() ? text : text + " (needs " + joined(v.missing) + ")";
+    const std::string text = in_words(v, digits);
+    const bool number = v.holds == value::type::number && !v.never;
+    return !number || v.missing.empty() ? text : text + " (needs " + listed(v.missing) + ")";
 }
 
 std::string greatest(const value& v, int digits)

@@ -55,6 +55,9 @@ struct expression {
 /// Parses the text; complaints are added and nothing is returned if it is no expression.
 std::optional<expression> parse_expression(const std::string& text, const expression_place& where, std::vector<complaint>& complaints);
 
+/// "<=", "and", "*" ... as the language writes them.
+std::string sign_word(expression::op is);
+
 /// "(a <= (0.8 * b))": the tree in one line, for tests and people.
 std::string print(const expression& e);
 

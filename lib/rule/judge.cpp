@@ -13,40 +13,6 @@ namespace {
 
 using op = expression::op;
 
-std::string joined(const std::vector<std::string>& words, const char* between = ", ")
-{
-    std::string text;
-    for (const std::string& w : words) {
-        text += (text.empty() ? "" : between) + w;
-    }
-    return text;
-}
-
-std::string words_of(const value& v)
-{
-    if (v.never) {
-        return "never";
-    }
-    if (v.holds == value::type::truth) {
-        return v.truth ? (*v.truth ? "yes" : "no") : "unknown";
-    }
-    if (v.holds == value::type::choice) {
-        return v.choice.empty() ? "unknown" : v.choice;
-    }
-    if (v.numbers.empty()) {
-        return "unknown";
-    }
-    if (v.numbers.size() == 1) {
-        return format_spread(v.numbers.front());
-    }
-    spread all = v.numbers.front();
-    for (const spread& s : v.numbers) {
-        all = hull(all, s);
-    }
-    all.nominal.reset();
-    return "one of " + format_spread(all);
-}
-
 /// The message with its fields filled in.
 std::string filled(const std::string& message, const subject& about, const finding& f, const surroundings& s)
 {
@@ -59,13 +25,13 @@ std::string filled(const std::string& message, const subject& about, const findi
         if (name == "ref") {
             out += about.name;
         } else if (name == "nets") {
-            out += joined(about.nets, " to ");
+            out += listed(about.nets, " to ");
         } else if (name == "state") {
             out += word_for(s.in);
         } else if (name == "value") {
-            out += f.left ? words_of(*f.left) : "unknown";
+            out += f.left ? in_words(*f.left) : "unknown";
         } else if (name == "limit") {
-            out += f.limit ? words_of(*f.limit) : "unknown";
+            out += f.limit ? in_words(*f.limit) : "unknown";
         } else {
             expression e;
             e.is = op::name;
@@ -73,7 +39,7 @@ std::string filled(const std::string& message, const subject& about, const findi
             if (const auto spec = name_of_subject(*s.lib, about.kind, name)) {
                 e.type = spec->type;
             }
-            out += words_of(evaluate(e, s));
+            out += in_words(evaluate(e, s));
         }
         at = to + 1;
     }
@@ -132,32 +98,16 @@ std::optional<double> margin_of(const expression& e, const value& left, const va
     return (upper ? worst_right - worst_left : worst_left - worst_right) / std::abs(worst_right);
 }
 
-std::string sign_word(op is)
-{
-    switch (is) {
-    case op::less:
-        return "<";
-    case op::less_equal:
-        return "<=";
-    case op::greater:
-        return ">";
-    case op::greater_equal:
-        return ">=";
-    default:
-        return "=";
-    }
-}
-
 std::string settling(const rule& r, const finding& f)
 {
     if (f.judged == verdict::not_shown && !f.missing.empty()) {
-        return "give " + joined(f.missing);
+        return "give " + listed(f.missing);
     }
     if (f.judged == verdict::not_shown) {
         return r.settles.empty() ? "give figures that are known on both sides" : r.settles;
     }
     if (f.judged == verdict::marginal && f.marginal_by == "assumption") {
-        return "write a figure in place of what is assumed: " + joined(f.assumed);
+        return "write a figure in place of what is assumed: " + listed(f.assumed);
     }
     if (f.judged != verdict::marginal) {
         return {};
@@ -173,7 +123,7 @@ std::string settling(const rule& r, const finding& f)
             }
         }
     }
-    return inputs.empty() ? "measure it as built and write what was measured" : "measure and write as measured: " + joined(inputs);
+    return inputs.empty() ? "measure it as built and write what was measured" : "measure and write as measured: " + listed(inputs);
 }
 
 bool advised(const rule& r, const surroundings& s, const std::string& derating)

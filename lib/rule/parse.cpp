@@ -415,7 +415,23 @@ private:
     bool failed_ = false;
 };
 
-const char* sign_of(op is)
+} // namespace
+
+complaint expression_place::complain(std::size_t offset, std::string message) const
+{
+    place where = at;
+    if (basic_text && at.line > 0) {
+        where.column += static_cast<std::uint32_t>(1 + offset);
+    }
+    return doc->complain(where, std::move(message));
+}
+
+std::optional<expression> parse_expression(const std::string& text, const expression_place& where, std::vector<complaint>& complaints)
+{
+    return parser(text, where, complaints).run();
+}
+
+std::string sign_word(expression::op is)
 {
     switch (is) {
     case op::add:
@@ -447,22 +463,6 @@ const char* sign_of(op is)
     }
 }
 
-} // namespace
-
-complaint expression_place::complain(std::size_t offset, std::string message) const
-{
-    place where = at;
-    if (basic_text && at.line > 0) {
-        where.column += static_cast<std::uint32_t>(1 + offset);
-    }
-    return doc->complain(where, std::move(message));
-}
-
-std::optional<expression> parse_expression(const std::string& text, const expression_place& where, std::vector<complaint>& complaints)
-{
-    return parser(text, where, complaints).run();
-}
-
 std::string print(const expression& e)
 {
     switch (e.is) {
@@ -484,7 +484,7 @@ std::string print(const expression& e)
         return e.word + "(" + inside + ")";
     }
     default:
-        return "(" + print(e.parts[0]) + " " + sign_of(e.is) + " " + print(e.parts[1]) + ")";
+        return "(" + print(e.parts[0]) + " " + sign_word(e.is) + " " + print(e.parts[1]) + ")";
     }
 }
 

@@ -1,5 +1,7 @@
 #include "stress/facts.hpp"
 
+#include "quantity/text.hpp"
+
 #include <array>
 #include <utility>
 
@@ -56,6 +58,31 @@ value choice_of(std::string word)
     v.holds = value::type::choice;
     v.choice = std::move(word);
     return v;
+}
+
+std::string in_words(const value& v, int digits)
+{
+    if (v.never) {
+        return "never";
+    }
+    if (v.holds == value::type::truth) {
+        return v.truth ? (*v.truth ? "yes" : "no") : "unknown";
+    }
+    if (v.holds == value::type::choice) {
+        return v.choice.empty() ? "unknown" : v.choice;
+    }
+    if (v.numbers.empty()) {
+        return "unknown";
+    }
+    if (v.numbers.size() == 1) {
+        return format_spread(v.numbers.front(), digits);
+    }
+    spread all = v.numbers.front();
+    for (const spread& s : v.numbers) {
+        all = hull(all, s);
+    }
+    all.nominal.reset();
+    return "one of " + format_spread(all, digits);
 }
 
 value missing_value(value::type t, std::vector<std::string> names)

@@ -50,6 +50,9 @@ value truth_of(bool t);
 value choice_of(std::string word);
 value missing_value(value::type t, std::vector<std::string> names);
 
+/// The value for people: "184 V (166 V .. 192 V)", "never", "yes", "one of 50 V .. 250 V", "unknown".
+std::string in_words(const value& v, int digits = 4);
+
 /// What a rule is about.
 struct subject {
     std::string kind; // a part kind, "gap", "net-pair", "stored", "access", "converter" or "supply"

@@ -10,15 +10,6 @@ namespace onehand {
 
 namespace {
 
-std::string listed(const std::vector<std::string>& words)
-{
-    std::string text;
-    for (const std::string& w : words) {
-        text += (text.empty() ? "" : ", ") + w;
-    }
-    return text;
-}
-
 bool good_name(const std::string& name)
 {
     return !name.empty() && name.find_first_of(" \t\"'/~*") == std::string::npos;
