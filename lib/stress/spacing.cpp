@@ -128,10 +128,12 @@ std::optional<spread> altitude_factor(const use& u, const library& lib, value& v
     return *a.figure;
 }
 
-double least_clearance(int degree)
+/// The least by pollution degree, whatever the voltage.
+double least_clearance(int degree, const library& lib)
 {
-    // IEC 60664-1 table F.2, the least by pollution degree: 0.2 mm at 2, 0.8 mm at 3.
-    return degree >= 3 ? 0.0008 : degree == 2 ? 0.0002 : 0.0;
+    const table* t = lib.find_table("iec-60664-1-clearance-least");
+    const table_answer a = t == nullptr ? table_answer{} : look_up(*t, "least", exactly({static_cast<double>(degree), dim::none}));
+    return a.figure ? a.figure->whole.high : 0.0;
 }
 
 value clearance_needed(const spread& volts, int degree, bool reinforced, const use& u, const library& lib)
@@ -151,7 +153,7 @@ value clearance_needed(const spread& volts, int degree, bool reinforced, const u
         return v;
     }
     note_rows(v, *t, a);
-    const spread floored = clamped(*a.figure, least_clearance(degree), unbounded);
+    const spread floored = clamped(*a.figure, least_clearance(degree, lib), unbounded);
     v.numbers.push_back({dim::length,
                          {floored.in_use.low * factor->in_use.low, floored.in_use.high * factor->in_use.high},
                          {floored.whole.low * factor->whole.low, floored.whole.high * factor->whole.high},
