@@ -364,7 +364,9 @@ travel_form::travel_form(const std::vector<corner_sample>& samples, const std::v
 double travel_form::at(double place) const
 {
     const auto eval = [place](const std::array<double, 3>& q) { return q[0] + place * (q[1] + place * q[2]); };
-    return eval(numerator_) / eval(denominator_);
+    const double below = eval(denominator_);
+    // At a pole the figure has no bound; the caller is told of the pole apart.
+    return below == 0.0 ? std::copysign(std::numeric_limits<double>::infinity(), eval(numerator_)) : eval(numerator_) / below;
 }
 
 travel_extreme travel_form::over(double from, double to) const

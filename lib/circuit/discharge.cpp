@@ -165,7 +165,7 @@ double certified_time(const rc_network& n, int a, int b, double limit)
 {
     const double farads = least_capacitance(n, a, b);
     const double rate = slowest_rate(n, a, b);
-    if (!(farads > 0.0) || !(rate > 0.0) || std::isinf(rate)) {
+    if (!(farads > 0.0) || !(rate > 0.0) || !(limit > 0.0) || std::isinf(rate)) {
         return infinity;
     }
     const double volts = std::sqrt(2.0 * stored_at_most(n) / farads);

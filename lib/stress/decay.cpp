@@ -79,8 +79,8 @@ value capacitance_from_decay(const supply& s, const std::vector<path>& paths, co
     for (const decay& d : s.decays) {
         const bool same =
             (d.nets[0] == inside.positive && d.nets[1] == inside.negative) || (d.nets[0] == inside.negative && d.nets[1] == inside.positive);
-        if (!same) {
-            continue;
+        if (!same || !(d.to->number()->whole.high > 0.0) || !std::isfinite(d.from->number()->whole.low)) {
+            continue; // a decay to nothing bounds nothing
         }
         // The conductance at its greatest: a smaller one would tell less capacitance than there may be.
         double siemens = conductance_at_most(paths, inside.positive, inside.negative);
