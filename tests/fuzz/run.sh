@@ -11,5 +11,5 @@ cmake --build "$out" --target fuzz_quantity fuzz_expression fuzz_document -j "$(
 for target in quantity expression document; do
     echo "-- fuzz_$target"
     mkdir -p "$out/corpus_$target"
-    "$out/tests/fuzz/fuzz_$target" -max_total_time="$seconds" -max_len=4096 -print_final_stats=0 -verbosity=0 "$out/corpus_$target" "$out/seeds"
+    "$out/tests/fuzz/fuzz_$target" -max_total_time="$seconds" -max_len=4096 -verbosity=0 "$out/corpus_$target" "$out/seeds" 2>"$out/fuzz_$target.log" || { tail -40 "$out/fuzz_$target.log"; exit 1; }
 done
