@@ -98,6 +98,16 @@ std::string default_insulation(const std::string& a, const std::string& b, const
     return i != circuits.end() && j != circuits.end() && i->second == j->second ? "functional" : "basic";
 }
 
+namespace {
+
+bool wider(const gap& a, const gap& b)
+{
+    const auto along = [](const gap& g) { return g.creepage && g.creepage->number() != nullptr ? g.creepage->number()->whole.low : 0.0; };
+    return along(a) > along(b);
+}
+
+} // namespace
+
 const gap* gap_for(const supply& s, const std::string& a, const std::string& b)
 {
     const gap* floor = nullptr;
@@ -108,7 +118,8 @@ const gap* gap_for(const supply& s, const std::string& a, const std::string& b)
         if ((g.nets[0] == a && g.nets[1] == b) || (g.nets[0] == b && g.nets[1] == a)) {
             return &g;
         }
-        if (g.nets[1] == "*" && (g.nets[0] == a || g.nets[0] == b) && floor == nullptr) {
+        // Two floor gaps may hold for one pair: both are true, so the wider one is.
+        if (g.nets[1] == "*" && (g.nets[0] == a || g.nets[0] == b) && (floor == nullptr || wider(g, *floor))) {
             floor = &g;
         }
     }
