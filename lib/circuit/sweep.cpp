@@ -325,6 +325,9 @@ private:
             const double g1 = 1.0 / low_ohms;
             const double g2 = 1.0 / high_ohms;
             const double slope = (1.0 / v1 - 1.0 / v2) / (g1 - g2);
+            if (!(slope > 0.0)) {
+                continue;
+            }
             const double start = 1.0 / v1 - slope * g1;
             const double peak_at = start / slope;
             if (tracked) {
@@ -333,7 +336,7 @@ private:
                 if (peak_at > 0.25 * g2 && peak_at < 4.0 * g1) {
                     widen(out_.power[b], out_.power[b].low, v1 * g1 * v2);
                 }
-            } else if (slope > 0.0 && peak_at > g2 && peak_at < g1) {
+            } else if (peak_at > g2 && peak_at < g1) {
                 const double v = 0.5 / start;
                 widen(out_.power[b], out_.power[b].low, peak_at * v * v);
             }
