@@ -10,7 +10,6 @@ namespace onehand::circuit {
 
 namespace {
 
-constexpr double least_ohms = 1e-3;  // stands for a short where a resistance is unknown
 constexpr double closed_ohms = 1e-6; // a closed alternative
 constexpr std::array<double, 3> places{0.25, 0.5, 0.75};
 
