@@ -35,13 +35,16 @@ kelvin heated(kelvin air, watt p, kelvin_per_watt rth)
     return air + p * rth;
 }
 
-pascal standard_pressure(metre height)
+std::optional<pascal> standard_pressure(metre height)
 {
     constexpr double sea_level = 101325.0;
     constexpr double lapse = 0.0065;  // K/m
     constexpr double ground = 288.15; // K
     constexpr double power = 5.25588; // g M/(R L)
     const double h = height.value();
+    if (!(h >= 0.0 && h <= 20000.0)) {
+        return std::nullopt;
+    }
     const double pa = h <= 11000.0 ? sea_level * std::pow(1.0 - lapse * h / ground, power) : 22632.0 * std::exp(-(h - 11000.0) / 6341.6);
     return pascal::from_value(pa);
 }

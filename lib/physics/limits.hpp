@@ -2,6 +2,8 @@
 // What a part may take and what a source can push, as closed forms.
 #include "quantity/bridge.hpp"
 
+#include <optional>
+
 namespace onehand::physics {
 
 /// Rated voltage of a resistor: min(sqrt(P R), limiting element voltage) (IEC 60115-1, from memory).
@@ -20,7 +22,8 @@ volt divided(volt u, ohm upper, ohm lower);
 /// Junction or body temperature: air + P Rth.
 kelvin heated(kelvin air, watt p, kelvin_per_watt rth);
 
-/// Pressure of the standard atmosphere up to 11 km, and by the isothermal layer to 20 km (ISO 2533). Height in metres above sea level.
-pascal standard_pressure(metre height);
+/// Pressure of the standard atmosphere up to 11 km, and by the isothermal layer to 20 km (ISO 2533). Height above sea level; nothing outside 0 to 20
+/// km.
+std::optional<pascal> standard_pressure(metre height);
 
 } // namespace onehand::physics

@@ -74,6 +74,9 @@ std::string about_words(std::string_view text, const dimension& expected)
     if (has(low, "vdc") || has(low, "vac") || has(low, "v dc") || has(low, "adc") || has(low, "a dc")) {
         return "write the unit alone, \"400 V\": the file speaks of d.c. throughout";
     }
+    if ((has(text, "+-") || has(text, "\u00b1")) && (has(text, "/-") || has(text, "/+"))) {
+        return "a tolerance with two different sides is written \"+50/-10 %\"";
+    }
     if (has(text, "/") && number_then(text, "W") && expected == dim::power) {
         return "a fraction is not read: write \"0.25 W\" for a quarter watt";
     }

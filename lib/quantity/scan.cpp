@@ -29,7 +29,9 @@ std::optional<int> code_exponent(std::string_view mark, const dimension& expecte
     static constexpr std::array<row, 7> reactive{{{"p", -12}, {"n", -9}, {"u", -6}, {"\u00b5", -6}, {"\u03bc", -6}, {"m", -3}, {"F", 0}}};
     const auto& rows = expected == dim::resistance ? resistance : reactive;
     for (const row& r : rows) {
-        if (r.mark == mark && !(r.mark == "F" && expected != dim::capacitance)) {
+        // A bare "m" on a capacitor is a slip for microfarads more often than a millifarad: its unit must be written.
+        const bool refused = (r.mark == "F" && expected != dim::capacitance) || (r.mark == "m" && expected == dim::capacitance);
+        if (r.mark == mark && !refused) {
             return r.exponent;
         }
     }

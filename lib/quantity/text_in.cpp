@@ -88,7 +88,11 @@ parsed<one_value> take_value(cursor& c, const dimension& expected, bool as_diffe
                         "mF is the millifarad: " + std::string(c.text.substr(start, c.at - start)) + " is " + format_quantity({*value, expected}) +
                             "; for microfarads write uF, for farads write F");
     }
-    return one_value{*value * unit->factor + unit->offset, unit->offset != 0.0};
+    const double si = *value * unit->factor + unit->offset;
+    if (expected == dim::temperature && si < 0.0) {
+        return error_at(c, start, "below absolute zero");
+    }
+    return one_value{si, unit->offset != 0.0};
 }
 
 struct tolerance {
@@ -112,6 +116,9 @@ std::optional<tolerance> take_two_sided(cursor& c)
     cursor t = c;
     if (!t.take("+")) {
         return std::nullopt;
+    }
+    if (t.rest().starts_with("-") || t.rest().starts_with("+") || t.rest().starts_with("\u2212")) {
+        return std::nullopt; // "+-": both sides alike, read elsewhere
     }
     const auto plus = percent(t);
     t.blanks();
@@ -157,7 +164,8 @@ parsed<std::optional<tolerance>> take_tolerance(cursor& c, const dimension& expe
         const double width = std::abs(std::get<one_value>(step).si);
         return std::optional(tolerance{false, width, width});
     }
-    if (!c.done() && c.text[c.at] >= 'A' && c.text[c.at] <= 'Z' && blank(c.rest().substr(1))) {
+    const bool coded = expected == dim::resistance || expected == dim::capacitance || expected == dim::inductance;
+    if (coded && !c.done() && c.text[c.at] >= 'A' && c.text[c.at] <= 'Z' && blank(c.rest().substr(1))) {
         const auto letter = scan::tolerance_letter(c.text[c.at]);
         if (!letter) {
             return error_at(c, c.at, std::string("sources disagree on the tolerance letter '") + c.text[c.at] + "': write the tolerance in %");
@@ -211,7 +219,7 @@ parsed<spread> take_whole(cursor& c, spread s)
     return s;
 }
 
-parsed<spread> take_adjustable(cursor& c, const dimension& expected, double low)
+parsed<spread> take_adjustable(cursor& c, const dimension& expected, double low, bool absolute)
 {
     const std::size_t start = c.at;
     const auto value = take_value(c, expected, false);
@@ -228,6 +236,9 @@ parsed<spread> take_adjustable(cursor& c, const dimension& expected, double low)
         return *wrong;
     }
     if (const auto& t = std::get<std::optional<tolerance>>(tolerated)) {
+        if (t->relative && absolute) {
+            return error_at(c, 0, "a tolerance on a temperature is written in K");
+        }
         s.whole = {widened(low, *t).low, widened(high, *t).high};
         return s;
     }
@@ -249,7 +260,7 @@ parsed<spread> take_spread(cursor& c, const dimension& expected)
     const one_value nominal = std::get<one_value>(first);
     c.blanks();
     if (c.take("..")) {
-        return take_adjustable(c, expected, nominal.si);
+        return take_adjustable(c, expected, nominal.si, nominal.absolute_temperature);
     }
     const auto tolerated = take_tolerance(c, expected, nominal.si);
     if (const auto* wrong = std::get_if<text_error>(&tolerated)) {

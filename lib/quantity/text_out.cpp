@@ -3,6 +3,7 @@
 
 #include <array>
 #include <cmath>
+#include <cstdlib>
 #include <fmt/format.h>
 
 namespace onehand {
@@ -39,7 +40,7 @@ std::optional<printed_unit> unit_for(const dimension& d)
     }
     for (const unit_row& row : unit_rows()) {
         if (row.dim == d && !row.printed.empty()) {
-            return printed_unit{row.printed, row.prefixed, -12, 9};
+            return printed_unit{row.printed, row.prefixed, -12, row.most};
         }
     }
     return std::nullopt;
@@ -71,7 +72,7 @@ std::string base_units(const dimension& d)
 /// x rounded to `digits` significant figures, for choosing the prefix: 999.96 at 4 digits is 1000.
 double rounded(double x, int digits)
 {
-    return x == 0.0 ? 0.0 : std::stod(fmt::format("{:.{}e}", x, digits - 1));
+    return x == 0.0 ? 0.0 : std::strtod(fmt::format("{:.{}e}", x, digits - 1).c_str(), nullptr);
 }
 
 const printed_prefix& prefix_for(double x, const printed_unit& unit, int digits)
@@ -95,7 +96,7 @@ std::string exact_digits(double x, int exponent)
         std::string text = fmt::format("{:.{}g}", x / std::pow(10.0, exponent), digits);
         const auto back = parse_quantity(text + (exponent == 0 ? "" : ""), dim::none);
         const auto* q = std::get_if<quantity>(&back);
-        if (q != nullptr && std::stod(text + (text.find('e') == std::string::npos ? "e" + std::to_string(exponent) : "")) == x &&
+        if (q != nullptr && std::strtod((text + (text.find('e') == std::string::npos ? "e" + std::to_string(exponent) : "")).c_str(), nullptr) == x &&
             text.find('e') == std::string::npos) {
             return text;
         }

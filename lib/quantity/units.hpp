@@ -16,6 +16,7 @@ struct unit_row {
     dimension dim{};
     bool prefixed = false;    // takes a prefix
     std::string_view printed; // the form that output uses; empty: this row is only read
+    int most = 9;             // greatest prefix as a power of ten: megaamperes are a slip for milliamperes
 };
 
 const std::vector<unit_row>& unit_rows();

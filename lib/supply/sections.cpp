@@ -129,6 +129,10 @@ void read_use(reader& r)
     u.altitude = taken(f, "altitude");
     u.pollution_degree = taken(f, "pollution-degree");
     u.derating = taken(f, "derating");
+    if (u.inside_rise && u.inside_rise->written.find('C') != std::string::npos) {
+        r.complain(u.inside_rise->at, "'inside-rise' is a difference: write it in K, like \"15 K\"");
+        u.inside_rise.reset();
+    }
     if (u.pollution_degree) {
         const spread& s = *u.pollution_degree->number();
         if (s.whole.low != s.whole.high || s.whole.low != std::floor(s.whole.low)) {

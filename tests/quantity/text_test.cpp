@@ -17,6 +17,14 @@ struct refused_row {
 };
 
 const refused_row refused[] = {
+    // Each of these was once read, one of them optimistically.
+    {"voltage", "400 V +-50/-10 %", 10, "a tolerance with two different sides is written \"+50/-10 %\""},
+    {"current", "250 MA", 4, "no unit 'MA': a current is due: write it like \"20 mA\""},
+    {"voltage", "1 kV M", 5, "'M' is left over after the value"},
+    {"capacitance", "3300m", 0, "3300m is a length: a capacitance is due: write it like \"3.3 uF\""},
+    {"temperature", "10 degC .. 35 degC +-5%", 0, "a tolerance on a temperature is written in K"},
+    {"temperature", "-300 degC", 0, "below absolute zero"},
+    {"melting-integral", "1.2 mA2s", 4, "no unit 'mA2s': a melting integral is due: write it like \"1.2 A2s\""},
     {"temperature", "35 C", 0, "C is the coulomb: for a temperature write \"35 degC\""},
     {"resistance", "4,7k", 0, "a comma is read two ways: write the decimal point, \"4.7\", and no thousands mark"},
     {"resistance", "1meg", 1, "'meg' is no prefix: a million ohms is written \"1M\" or \"1 Mohm\""},
@@ -220,6 +228,19 @@ TEST_CASE("round trip: what is written reads back to the same spread")
             REQUIRE(got->nominal == s.nominal);
         }
     }
+}
+
+TEST_CASE("a figure too small for ordinary doubles prints and does not stop the program")
+{
+    CHECK_FALSE(format_quantity({1e-320, dim::voltage}).empty());
+    CHECK_FALSE(format_quantity({-4e-324, dim::resistance}, 17).empty());
+}
+
+TEST_CASE("two different sides of a tolerance are both kept")
+{
+    const auto s = std::get<spread>(parse_spread("400 V +50/-10 %", dim::voltage));
+    CHECK(s.whole.low == doctest::Approx(360.0).epsilon(1e-12).scale(0));
+    CHECK(s.whole.high == doctest::Approx(600.0).epsilon(1e-12).scale(0));
 }
 
 TEST_CASE("rounding never crosses a prefix wrongly and nothing prints as minus zero")

@@ -30,6 +30,7 @@ struct added {
 };
 
 const added additions[] = {
+    {"[use]\ninside-rise = \"5 degC\"", "13:15: 'inside-rise' is a difference: write it in K, like \"15 K\""},
     {"[resistors]\nR3 = { nets = [\"HT\", \"0V\"] }", "12:2: 'resistors' is no section and no kind of part; nearest known name: resistor"},
     {"[resistance]\nR3 = { nets = [\"HT\", \"0V\"] }", "12:2: 'resistance' is no section and no kind of part"},
     {"[capacitor]\nC1 = { nets = [\"HT\", \"0V\"], valeu = \"1 uF\" }", "13:29: unknown key 'valeu' in capacitor 'C1'; nearest known name: value"},
