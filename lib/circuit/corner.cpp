@@ -24,6 +24,7 @@ public:
     system(const component_plan& p, const choice& chosen, double place) : p_(p), chosen_(chosen), place_(place) { build(); }
 
     bool floating(int cluster) const { return floats_[at(cluster)]; }
+    int island(int cluster) const { return floats_[at(cluster)] ? island_[at(cluster)] : -1; }
     double weight() const { return lu_.determinant(); }
 
     std::vector<double> node(int cluster) const
@@ -66,6 +67,7 @@ public:
             told[p_.red->sources.size() + at(position)] = 1.0;
             break;
         case form::clamp:
+        case form::fixed:
         case form::closed:
             for (int c = 0; c < p_.columns; ++c) {
                 told[at(c)] = x_(extra_of_[at(position)], c);
@@ -101,6 +103,7 @@ private:
     void build()
     {
         find_floating();
+        number_islands();
         row_of_.assign(at(p_.red->clusters), -1);
         int rows = 0;
         for (const int c : p_.part->clusters) {
@@ -108,7 +111,7 @@ private:
         }
         const int nodes = rows;
         for (std::size_t i = 0; i < p_.states.size(); ++i) {
-            rows += state(i).is == form::clamp || state(i).is == form::closed ? 1 : 0;
+            rows += state(i).is == form::clamp || state(i).is == form::closed || state(i).is == form::fixed ? 1 : 0;
         }
         a_ = Eigen::MatrixXd::Zero(rows, rows);
         b_ = Eigen::MatrixXd::Zero(rows, p_.columns);
@@ -126,8 +129,9 @@ private:
             inject(cluster(p_.net->held->sense), p_.threshold_column + 1, -1.0);
         }
         for (const int c : p_.part->clusters) {
-            if (floats_[at(c)]) {
-                a_(row_of_[at(c)], row_of_[at(c)]) += 1.0; // an island is tied down so that the rest can be solved; its figures are not read
+            if (floats_[at(c)] && island_[at(c)] == c) {
+                a_(row_of_[at(c)], row_of_[at(c)]) +=
+                    1.0; // an island is tied down at one node: no current flows there, its inner differences are true
             }
         }
         if (rows > 0) {
@@ -152,9 +156,10 @@ private:
             inject(to, column, 1.0);
             return extra;
         case form::clamp:
+        case form::fixed:
         case form::closed:
             extra_of_[i] = extra;
-            tie(from, to, extra, state(i).is == form::clamp ? column : -1);
+            tie(from, to, extra, state(i).is == form::closed ? -1 : column);
             return extra + 1;
         default:
             return extra;
@@ -239,12 +244,46 @@ private:
         }
     }
 
+    /// Nodes that float as one share the number of their first.
+    void number_islands()
+    {
+        island_.resize(floats_.size());
+        for (std::size_t c = 0; c < island_.size(); ++c) {
+            island_[c] = static_cast<int>(c);
+        }
+        const auto join = [&](int a, int b) {
+            if (!floats_[at(a)] || !floats_[at(b)]) {
+                return false;
+            }
+            const int low = std::min(island_[at(a)], island_[at(b)]);
+            const bool grew = island_[at(a)] != low || island_[at(b)] != low;
+            island_[at(a)] = island_[at(b)] = low;
+            return grew;
+        };
+        for (bool grew = true; grew;) {
+            grew = false;
+            for (std::size_t i = 0; i < p_.states.size(); ++i) {
+                const branch& b = p_.net->branches[at(p_.part->branches[i])];
+                const form is = state(i).is;
+                if (is != form::open && is != form::current && !(is == form::resistance && state(i).ohms >= most_ohms)) {
+                    grew = join(cluster(b.from), cluster(b.to)) || grew;
+                }
+            }
+            for (const int t : p_.part->tracks) {
+                const track& k = p_.net->tracks[at(t)];
+                grew = join(cluster(k.end_1), cluster(k.wiper)) || grew;
+                grew = join(cluster(k.wiper), cluster(k.end_2)) || grew;
+            }
+        }
+    }
+
     const component_plan& p_;
     const choice& chosen_;
     double place_;
     std::vector<int> row_of_;
     std::vector<int> extra_of_; // per branch: row of its own current
     std::vector<bool> floats_;
+    std::vector<int> island_; // per cluster, of those that float
     Eigen::MatrixXd a_, b_, x_;
     Eigen::PartialPivLU<Eigen::MatrixXd> lu_;
 };
@@ -253,7 +292,7 @@ private:
 std::vector<double> raw_form(const component_plan& p, const system& s, const component_plan::figure& f)
 {
     using of = component_plan::figure::of;
-    const auto between = [&](int a, int b) { return s.floating(a) || s.floating(b) ? std::vector<double>{} : s.difference(a, b); };
+    const auto between = [&](int a, int b) { return s.island(a) != s.island(b) ? std::vector<double>{} : s.difference(a, b); };
     switch (f.what) {
     case of::node:
         return s.floating(f.a) ? std::vector<double>{} : s.node(f.a);
@@ -265,7 +304,7 @@ std::vector<double> raw_form(const component_plan& p, const system& s, const com
     }
     case of::through: {
         const branch& b = p.net->branches[at(p.part->branches[at(f.a)])];
-        return s.floating(s.cluster(b.from)) || s.floating(s.cluster(b.to)) ? std::vector<double>{} : s.through(f.a);
+        return s.island(s.cluster(b.from)) != s.island(s.cluster(b.to)) ? std::vector<double>{} : s.through(f.a);
     }
     default:
         break;
@@ -328,6 +367,7 @@ corner solve_corner(const component_plan& p, const choice& chosen)
         if (i == 0) {
             for (const int c : p.part->clusters) {
                 out.floating.push_back(s.floating(c));
+                out.island.push_back(s.island(c));
             }
         }
         out.samples.push_back(std::move(sample));

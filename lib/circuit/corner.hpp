@@ -63,6 +63,7 @@ struct corner_sample {
 struct corner {
     std::vector<corner_sample> samples; // one, or three with a track (positions 1/4, 1/2, 3/4)
     std::vector<bool> floating;         // per cluster of the component
+    std::vector<int> island;            // per cluster: -1 held, else a number that those which float as one share
     bool lost = false;                  // the sense does not depend on the output
 };
 corner solve_corner(const component_plan& p, const choice& at);

@@ -17,7 +17,7 @@ struct box {
     bool point() const { return low == high; }
 };
 
-enum class form { open, closed, resistance, clamp, current };
+enum class form { open, closed, resistance, clamp, current, fixed }; // fixed: an ideal voltage either way, inside the room
 
 /// One form that a branch may take: ohm, volt (from above to; it carries current from -> to only, and stands beside `open`) or ampere (from -> to).
 struct option {
@@ -40,7 +40,7 @@ struct track {
     box position;
 };
 
-/// An ideal source: plus above minus. Sources must hang on node 0 without a loop.
+/// An ideal source: plus above minus, without a loop. One that hangs on nothing fixes the difference of its nodes only.
 struct source {
     int plus = 0;
     int minus = 0;
@@ -88,6 +88,7 @@ struct solution {
     extreme output;             // of the held output
     std::vector<output_end> set_by;
     std::vector<bool> floating;                // per node: in some case nothing holds it
+    std::vector<std::vector<bool>> together;   // [a][b]: in every case both are held, or float as one island: their difference is told in all cases
     std::vector<std::vector<extreme>> voltage; // [a][b]: a above b, cases in which either floats not counted
     std::vector<extreme> current;              // per branch, from -> to
     std::vector<extreme> power;                // per branch, in its resistance or clamp

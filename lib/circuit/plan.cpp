@@ -29,6 +29,27 @@ std::vector<branch_state> states_of(const branch& b)
     return list;
 }
 
+/// Where a further track's wiper is looked at: close towards both ends, since what its sections match may be a small share of it.
+std::vector<double> places_of(const track& t)
+{
+    constexpr double nearest = 1e-9; // to an end: a wiper on it would short its section
+    const double low = std::clamp(t.position.low, nearest, 1.0 - nearest);
+    const double high = std::clamp(t.position.high, nearest, 1.0 - nearest);
+    std::vector<double> list{low};
+    for (double p = nearest; p < 0.5; p *= 1.5) {
+        for (const double place : {p, 1.0 - p}) {
+            if (place > low && place < high) {
+                list.push_back(place);
+            }
+        }
+    }
+    if (high > low) {
+        list.push_back(high);
+    }
+    std::sort(list.begin(), list.end());
+    return list;
+}
+
 void list_figures(component_plan& p)
 {
     using of = component_plan::figure::of;
@@ -70,7 +91,7 @@ component_plan plan_for(const network& n, const reduced& r, const component& c)
         box span; // hull over the clamp and current options
         bool any = false;
         for (const option& o : n.branches[at(b)].options) {
-            if (o.is == form::clamp || o.is == form::current) {
+            if (o.is == form::clamp || o.is == form::current || o.is == form::fixed) {
                 span = any ? box{std::min(span.low, o.at.low), std::max(span.high, o.at.high)} : o.at;
                 any = true;
             }
@@ -82,11 +103,7 @@ component_plan plan_for(const network& n, const reduced& r, const component& c)
         p.track_ohms.push_back(t.resistance.point() ? std::vector<double>{usable(t.resistance.low)}
                                                     : std::vector<double>{usable(t.resistance.low), usable(t.resistance.high)});
         if (i > 0) {
-            std::vector<double> list;
-            for (int k = 0; k <= 8; ++k) {
-                list.push_back(std::clamp(t.position.low + (t.position.high - t.position.low) * k / 8.0, 1e-6, 1.0 - 1e-6));
-            }
-            p.track_places.push_back(std::move(list));
+            p.track_places.push_back(places_of(t));
         }
     }
     p.threshold_column = static_cast<int>(p.column_box.size());

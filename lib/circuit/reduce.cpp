@@ -119,6 +119,11 @@ void hold(const network& n, reduced& r)
             p->resize(r.sources.size(), 0.0);
         }
     }
+    for (std::size_t i = 0; i < links.size(); ++i) {
+        if (!used[i] && links[i].plus != links[i].minus) {
+            r.unheld.push_back(static_cast<int>(i));
+        }
+    }
 }
 
 void split(const network& n, reduced& r)

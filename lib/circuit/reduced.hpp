@@ -24,6 +24,7 @@ struct reduced {
     std::vector<std::optional<combination>> potential; // per cluster; nothing: unknown
     std::vector<box> sources;                          // boxes of the global columns; the output's box is filled in once it is found
     int output_column = -1;                            // -1: not held by feedback
+    std::vector<int> unheld;                           // sources that hang on nothing, by their column
     std::vector<component> components;
     std::vector<int> component_of; // per cluster; -1: held
 };

@@ -144,6 +144,7 @@ private:
     void fill_nodes(solution& out) const
     {
         out.floating.assign(at(net_.nodes), false);
+        out.together.assign(at(net_.nodes), std::vector<bool>(at(net_.nodes), true));
         out.voltage.assign(at(net_.nodes), std::vector<extreme>(at(net_.nodes)));
         for (int a = 0; a < net_.nodes; ++a) {
             const int c = red_.cluster_of[at(a)];
@@ -156,8 +157,28 @@ private:
                 out.voltage[at(a)][at(b)] = e;
                 out.voltage[at(b)][at(a)] = {-e.high, -e.low, e.known, e.searched, e.margin};
             }
+            for (int b = 0; b < net_.nodes; ++b) {
+                out.together[at(a)][at(b)] = together(red_.cluster_of[at(a)], red_.cluster_of[at(b)]);
+            }
             out.voltage[at(a)][at(a)].known = true;
         }
+    }
+
+    bool together(int a, int b) const
+    {
+        const auto floats = [&](int c) {
+            const int owner = red_.component_of[at(c)];
+            if (owner < 0) {
+                return false;
+            }
+            const auto& list = red_.components[at(owner)].clusters;
+            return static_cast<bool>(swept_[at(owner)].floating[static_cast<std::size_t>(std::find(list.begin(), list.end(), c) - list.begin())]);
+        };
+        if (a == b || (!floats(a) && !floats(b))) {
+            return true;
+        }
+        const int owner = red_.component_of[at(a)];
+        return owner >= 0 && owner == red_.component_of[at(b)] && !swept_[at(owner)].apart.contains(std::minmax(a, b));
     }
 
     extreme pair(int a, int b) const
@@ -265,7 +286,29 @@ private:
 solution solve(const network& n)
 {
     reduced r = reduce(n);
-    return answers(n, r).run();
+    if (r.unheld.empty()) {
+        return answers(n, r).run();
+    }
+    // A source that hangs on nothing holds no node: it fixes the difference of two.
+    network hung = n;
+    hung.sources.clear();
+    for (std::size_t i = 0; i < n.sources.size(); ++i) {
+        if (std::find(r.unheld.begin(), r.unheld.end(), static_cast<int>(i)) == r.unheld.end()) {
+            hung.sources.push_back(n.sources[i]);
+        } else {
+            hung.branches.push_back({n.sources[i].plus, n.sources[i].minus, {{form::fixed, n.sources[i].volts}}});
+        }
+    }
+    if (n.held && std::find(r.unheld.begin(), r.unheld.end(), static_cast<int>(n.sources.size())) != r.unheld.end()) {
+        solution lost;
+        lost.feedback_lost = true; // an output that hangs on nothing cannot be sensed against the return
+        return lost;
+    }
+    reduced again = reduce(hung);
+    solution out = answers(hung, again).run();
+    out.current.resize(n.branches.size());
+    out.power.resize(n.branches.size());
+    return out;
 }
 
 } // namespace onehand::circuit

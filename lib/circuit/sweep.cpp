@@ -10,7 +10,7 @@ namespace onehand::circuit {
 namespace {
 
 constexpr std::size_t most_corners = 16384; // enumerated up to here, searched beyond
-constexpr double search_margin = 0.02;
+constexpr double search_margin = 0.03;
 
 std::size_t at(int i)
 {
@@ -136,6 +136,13 @@ private:
         const corner c = solve_corner(p_, chosen);
         for (std::size_t i = 0; i < c.floating.size(); ++i) {
             out_.floating[i] = out_.floating[i] || c.floating[i];
+        }
+        for (std::size_t i = 0; i < c.island.size(); ++i) {
+            for (std::size_t j = i + 1; j < c.island.size(); ++j) {
+                if (c.island[i] != c.island[j]) {
+                    out_.apart.insert(std::minmax(p_.part->clusters[i], p_.part->clusters[j]));
+                }
+            }
         }
         if (c.lost) {
             out_.lost = true;

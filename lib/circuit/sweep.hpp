@@ -3,6 +3,9 @@
 // combined exactly. Inside the room only.
 #include "circuit/corner.hpp"
 
+#include <set>
+#include <utility>
+
 namespace onehand::circuit {
 
 struct figure_extreme {
@@ -26,6 +29,7 @@ struct sweep_result {
     std::vector<figure_extreme> power;                   // per branch of the component
     std::vector<figure_extreme> track_power;             // per track
     std::vector<bool> floating;                          // per cluster of the component: in some corner
+    std::set<std::pair<int, int>> apart;                 // clusters that in some corner neither are held both nor float as one island
     bool lost = false;
     output_corner output_low, output_high;
     bool searched = false;

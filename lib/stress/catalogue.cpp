@@ -107,7 +107,8 @@ void add_whole(std::vector<fact_spec>& list)
     list.push_back(choice("supply", "setting", "as written", {"teaching lab", "repair bench", "display equipment"}));
     list.push_back(truth("supply", "chassis-declared", "a chassis net is written"));
     list.push_back(truth("supply", "return-bonded", "the return is bonded to the chassis"));
-    list.push_back(solved("supply", "highest-voltage", dim::voltage, "greatest voltage between any net and the return"));
+    list.push_back(
+        solved("supply", "highest-voltage", dim::voltage, "greatest voltage between any net and the return, or inside an output that floats"));
     list.push_back(solved("supply", "highest-energy", dim::energy, "greatest energy stored in one accessible pair"));
 }
 

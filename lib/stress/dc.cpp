@@ -43,6 +43,9 @@ public:
             for (const auto& [b, j] : whole_.node) {
                 if (a < b) {
                     out_.between[{a, b}] = between(a, i, b, j);
+                    if (together(i, j)) {
+                        out_.solved.insert({a, b});
+                    }
                 }
             }
         }
@@ -58,6 +61,7 @@ public:
 private:
     bool solved() const { return !at_whole_.feedback_lost && !at_use_.feedback_lost; }
     bool floats(int node) const { return !solved() || at_whole_.floating[at(node)] || at_use_.floating[at(node)]; }
+    bool together(int i, int j) const { return solved() && at_whole_.together[at(i)][at(j)] && at_use_.together[at(i)][at(j)]; }
     static std::size_t at(int i) { return static_cast<std::size_t>(i); }
 
     /// Nets that something unknown touches, and everything those reach without passing a held net, share what is missing.
@@ -194,7 +198,7 @@ private:
     value between(const std::string& a, int i, const std::string& b, int j) const
     {
         value v;
-        if (floats(i) || floats(j)) {
+        if (!together(i, j)) {
             // Bounded by both ends' own bounds; no closer, since nothing ties them.
             const value x = out_.potential.at(a);
             value y = out_.potential.at(b);
@@ -236,7 +240,7 @@ private:
             b.current.shown.formula = "current through " + e.ref + ", nodal solve";
             b.power.shown.formula = "V^2/R of " + e.ref + ", spread jointly";
         }
-        const bool floating = out_.floating.contains(e.from) || out_.floating.contains(e.to);
+        const bool floating = !together(whole_.node.at(e.from), whole_.node.at(e.to));
         for (value* v : {&b.voltage, &b.current, &b.power}) {
             inherit_ends(*v, e);
             // Across a part that floats in some case the current and power of the other cases are told; a resistance there may see its whole bound.

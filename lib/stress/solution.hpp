@@ -24,6 +24,7 @@ struct dc_solution {
     std::map<std::pair<std::string, std::string>, value> between; // first above second; names in order
     std::map<std::string, body_solution> bodies;                  // by reference of the body
     std::set<std::string> floating;                               // nothing holds it in some case: bounded by what it touches
+    std::set<std::pair<std::string, std::string>> solved;         // of `between`: what follows from the circuit, not from the bounds of both ends
 
     /// Signed voltage of a above b.
     value voltage(const std::string& a, const std::string& b) const;

@@ -118,6 +118,12 @@ value solved_supply::supply_fact(const std::string& name) const
             for (const auto& [net, v] : d.potential) {
                 figures.push_back(&v);
             }
+            // Of an output that nothing ties to the return its own voltage is known all the same.
+            for (const auto& [nets, v] : d.between) {
+                if (d.solved.contains(nets) && d.floating.contains(nets.first)) {
+                    figures.push_back(&v);
+                }
+            }
         }
         return highest(figures, dim::voltage);
     }

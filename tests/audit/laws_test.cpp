@@ -6,6 +6,7 @@
 #include <doctest/doctest.h>
 
 #include <algorithm>
+#include <cmath>
 #include <functional>
 #include <random>
 #include <set>
@@ -169,6 +170,58 @@ TEST_CASE("law 4: a net that nothing holds is told and never reads zero")
             CHECK(n.potential.front().second.numbers.front().whole.high > 150.0);
         }
     }
+}
+
+TEST_CASE("law 4: an output that nothing ties to the return keeps its own voltage")
+{
+    const std::string text = R"([supply]
+return = "0V"
+complete = ["capacitors", "sources", "access"]
+[use]
+ambient = "20 degC"
+inside-rise = "5 K"
+altitude = "100 m"
+pollution-degree = 2
+[input]
+nets = ["VIN", "0V"]
+voltage = "12 V"
+isolated = true
+[fuse]
+F1 = { nets = ["VIN", "VM"], rated-current = "1 A" }
+[converter.K1]
+topology = "module"
+input = ["VM", "0V"]
+outputs = [["HT", "HN"]]
+output-voltage = "400 V"
+internal-capacitance = "1 nF"
+[capacitor]
+C1 = { nets = ["HT", "HN"], value = "1 uF", rated-voltage = "100 V", dielectric = "polypropylene" }
+[resistor]
+R1 = { nets = ["HT", "HN"], value = "1M", package = "1206", rated-power = "0.25 W" }
+R2 = { nets = ["HT", "HN"], value = "1M", package = "1206", rated-power = "0.25 W" }
+[[access]]
+nets = ["HT", "HN"]
+at = "terminals"
+when = "always"
+[protection]
+label = true
+)";
+    const audit_result r = *run(text).result;
+    CHECK(found(r, "capacitor-voltage", "C1")->judged == verdict::fail);
+    REQUIRE(r.label);
+    CHECK(r.label->voltage.numbers.front().whole.high == doctest::Approx(400.0).epsilon(1e-9).scale(0));
+    CHECK(r.label->energy.numbers.front().whole.high == doctest::Approx(0.5 * 1.001e-6 * 160000.0).epsilon(1e-9).scale(0));
+    bool timed = false;
+    for (const discharge_facts& d : r.discharges) {
+        for (const discharge_facts::limit& l : d.limits) {
+            if (l.to.si == 60.0 && d.change == "none") {
+                // 500 kohm across 1.001 uF: RC ln(400/60).
+                CHECK(l.time.numbers.front().whole.high == doctest::Approx(0.5005 * std::log(400.0 / 60.0)).epsilon(1e-9).scale(0));
+                timed = true;
+            }
+        }
+    }
+    CHECK(timed);
 }
 
 TEST_CASE("law 6: unknown packages must agree in every published value")

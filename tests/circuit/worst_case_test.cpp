@@ -85,6 +85,32 @@ TEST_CASE("random networks with a trimmer: 200 never beaten over its whole trave
     }
 }
 
+TEST_CASE("two trimmers in one component: 60 never beaten over both travels")
+{
+    std::mt19937 r(20260103);
+    int two = 0;
+    for (int i = 0; i < 60; ++i) {
+        network n = random_network(r, 2, 1, true);
+        if (n.tracks.empty()) {
+            continue;
+        }
+        track t = n.tracks[0];
+        t.end_1 = pick(r, 0, n.nodes - 1);
+        t.end_2 = pick(r, 0, n.nodes - 1);
+        t.wiper = 3 + pick(r, 0, 1);
+        if (t.end_1 == t.wiper || t.end_2 == t.wiper) {
+            continue;
+        }
+        // No section below the milliohm at which every resistance of a network is held.
+        t.position = {1e-5, 1.0 - 1e-5};
+        n.tracks[0].position = t.position;
+        n.tracks.push_back(t);
+        never_beaten(n, solve(n), r, 60);
+        ++two;
+    }
+    CHECK(two > 15);
+}
+
 TEST_CASE("where it is proved the extremes are reached at corners")
 {
     std::mt19937 r(7);
