@@ -149,6 +149,10 @@ struct kind_spec {
     const field_spec* find(const std::string& field) const;
 };
 
+/// Facts of an example as written: name and figure, a truth as "true" or "false".
+using given_figures = std::vector<std::pair<std::string, std::string>>;
+given_figures given_of(const node& table);
+
 /// An ordered set of conditions from a standard; the expressions are compiled by the rule room.
 struct class_text {
     struct step {
@@ -162,7 +166,16 @@ struct class_text {
     std::string subject;
     std::vector<std::string> states;
     citation from;
+    /// What the class is for given facts; an empty `name_due` with what is missing: open.
+    struct example {
+        std::string name;
+        std::string name_due; // "ES2"
+        std::vector<std::string> missing;
+        given_figures given;
+        place at;
+    };
     std::vector<step> steps;
+    std::vector<example> examples;
     place at;
 };
 

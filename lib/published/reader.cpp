@@ -161,8 +161,32 @@ class_text read_class(const document& doc, const std::string& id, std::vector<co
             c.steps.push_back(std::move(s));
         }
     }
+    if (const node* examples = r.list("example", true)) {
+        for (const node& n : examples->items) {
+            table_reader one(doc, n, n.at, complaints);
+            class_text::example x;
+            x.at = n.at;
+            x.name = one.text("name", true);
+            x.name_due = one.text("class", true);
+            x.missing = one.texts("missing", false);
+            if (const node* given = one.table("given", true)) {
+                x.given = given_of(*given);
+            }
+            one.finish();
+            c.examples.push_back(std::move(x));
+        }
+    }
     r.finish();
     return c;
+}
+
+given_figures given_of(const node& table)
+{
+    given_figures given;
+    for (const entry& g : table.entries) {
+        given.emplace_back(g.key, g.value.kind == node_kind::truth ? (g.value.truth ? "true" : "false") : g.value.text);
+    }
+    return given;
 }
 
 } // namespace onehand

@@ -11,9 +11,9 @@ namespace {
 
 class given_facts final : public fact_source {
 public:
-    given_facts(const library& lib, const rule& r, const rule_example& e) : lib_(lib), rule_(r)
+    given_facts(const library& lib, std::string subject, const given_figures& given) : lib_(lib), subject_(std::move(subject))
     {
-        for (const auto& [name, figure] : e.given) {
+        for (const auto& [name, figure] : given) {
             given_[name] = figure;
         }
     }
@@ -24,7 +24,7 @@ public:
         if (it == given_.end()) {
             it = given_.find(name);
         }
-        const auto spec = name_of_subject(lib_, rule_.shown.subject, name);
+        const auto spec = name_of_subject(lib_, subject_, name);
         const value::type type = spec ? spec->type : value::type::number;
         if (it == given_.end()) {
             return missing_value(type, {name});
@@ -82,28 +82,76 @@ private:
     }
 
     const library& lib_;
-    const rule& rule_;
+    std::string subject_;
     std::map<std::string, std::string> given_;
 };
 
 } // namespace
 
+namespace {
+
+/// " without voltage" for each name due, where it is missing; the same words on both sides if they agree.
+std::string without(const std::vector<std::string>& due, const std::vector<std::string>* found)
+{
+    std::string words;
+    for (const std::string& name : due) {
+        const bool there = found == nullptr || std::find(found->begin(), found->end(), name) != found->end();
+        words += there ? " without " + name : "";
+    }
+    return words;
+}
+
+state first_of(const std::vector<state>& states)
+{
+    return states.empty() ? state::running : states.front();
+}
+
+} // namespace
+
+std::vector<example_result> run_examples_of(const rule& r, const library& lib)
+{
+    std::vector<example_result> list;
+    for (const rule_example& e : r.examples) {
+        const given_facts facts(lib, r.shown.subject, e.given);
+        const subject about{r.shown.subject, "X", {"HT", "0V"}, {}};
+        const finding f = judge_one(r, lib, about, first_of(r.states), facts, facts.classes(), e.advice ? e.derating : "none");
+        std::string expected = e.verdict + without(e.missing, nullptr);
+        std::string got = word_for(f.judged) + without(e.missing, &f.missing);
+        if (e.advice) {
+            expected += *e.advice ? ", advised" : "";
+            got += f.advice.empty() ? "" : ", advised";
+        }
+        list.push_back({r.shown.id, e.name, expected, got, expected == got});
+    }
+    return list;
+}
+
+std::vector<example_result> run_examples_of(const compiled_class& c, const library& lib)
+{
+    rule_set alone;
+    alone.classes.push_back(c);
+    std::vector<example_result> list;
+    for (const class_text::example& e : c.text.examples) {
+        const given_facts facts(lib, c.text.subject, e.given);
+        const subject about{c.text.subject, "X", {"HT", "0V"}, {}};
+        std::vector<class_told> told;
+        classes_of(alone, lib, about, first_of(c.states), facts, &told);
+        const std::string expected = (e.missing.empty() ? e.name_due : "open") + without(e.missing, nullptr);
+        const std::string got = told.empty() ? "not told" : (told[0].name.empty() ? "open" : told[0].name) + without(e.missing, &told[0].missing);
+        list.push_back({c.text.id, e.name, expected, got, expected == got});
+    }
+    return list;
+}
+
 std::vector<example_result> run_examples(const rule_set& rules, const library& lib)
 {
     std::vector<example_result> list;
+    const auto add = [&](std::vector<example_result> some) { std::move(some.begin(), some.end(), std::back_inserter(list)); };
     for (const rule& r : rules.rules) {
-        for (const rule_example& e : r.examples) {
-            const given_facts facts(lib, r, e);
-            const subject about{r.shown.subject, "X", {"HT", "0V"}, {}};
-            const finding f = judge_one(r, lib, about, r.states.empty() ? state::running : r.states.front(), facts, facts.classes(), "none");
-            std::string got = word_for(f.judged);
-            std::string expected = e.verdict;
-            for (const std::string& name : e.missing) {
-                expected += " without " + name;
-                got += std::find(f.missing.begin(), f.missing.end(), name) != f.missing.end() ? " without " + name : "";
-            }
-            list.push_back({r.shown.id, e.name, expected, got, expected == got});
-        }
+        add(run_examples_of(r, lib));
+    }
+    for (const compiled_class& c : rules.classes) {
+        add(run_examples_of(c, lib));
     }
     return list;
 }

@@ -271,14 +271,16 @@ private:
                     x.name = k.value.text;
                 } else if (k.key == "verdict") {
                     x.verdict = k.value.text;
+                } else if (k.key == "advice") {
+                    x.advice = k.value.truth;
+                } else if (k.key == "derating") {
+                    x.derating = k.value.text;
                 } else if (k.key == "missing") {
                     for (const node& m : k.value.items) {
                         x.missing.push_back(m.text);
                     }
                 } else if (k.key == "given") {
-                    for (const entry& g : k.value.entries) {
-                        x.given.emplace_back(g.key, g.value.kind == node_kind::truth ? (g.value.truth ? "true" : "false") : g.value.text);
-                    }
+                    x.given = given_of(k.value);
                 } else {
                     complain(k.key_at, "unknown key '" + k.key + "' in an example");
                 }

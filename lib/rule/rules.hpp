@@ -43,7 +43,7 @@ judgement judge(const rule_set& rules, const library& lib, const std::vector<sub
 /// Design section 3. `unattested` are the lines for what the description does not attest as complete.
 conclusions conclude(const std::vector<finding>& findings, bool waiting_time_known);
 
-/// Runs a rule's own examples; one line a mismatch. `id` empty: all.
+/// Runs the examples of every rule and class.
 struct example_result {
     std::string rule;
     std::string example;
