@@ -2,15 +2,18 @@
 
 #include "audit/digest.hpp"
 #include "published/embedded.hpp"
+#include "rule/packed.hpp"
 
 namespace onehand {
 
-session_result open_session(const std::vector<rule_text>& own)
+namespace {
+
+/// Built-in and own files together, from their texts: an own file may add to anything.
+session_result open_with(const std::vector<rule_text>& own)
 {
     session_result result;
     auto opened = std::make_shared<session>();
-    const std::vector<rule_text> built_in = embedded_rules();
-    library_result loaded = load_library(built_in, own);
+    library_result loaded = load_library(embedded_rules(), own);
     result.complaints = std::move(loaded.complaints);
     if (any_mistake(result.complaints)) {
         return result;
@@ -23,13 +26,28 @@ session_result open_session(const std::vector<rule_text>& own)
         return result;
     }
     opened->rules = std::move(compiled.rules);
-    std::string all;
-    for (const auto* list : {&built_in, &own}) {
-        for (const rule_text& file : *list) {
-            all += file.name + '\n' + file.text;
-        }
+    std::string all = embedded_stamp();
+    for (const rule_text& file : own) {
+        all += file.name + '\n' + file.text;
     }
     opened->stamp = sha256_of(all).substr(0, 12);
+    result.ready = std::move(opened);
+    return result;
+}
+
+} // namespace
+
+session_result open_session(const std::vector<rule_text>& own)
+{
+    if (!own.empty()) {
+        return open_with(own);
+    }
+    ready_set set = unpacked(packed_rules());
+    auto opened = std::make_shared<session>();
+    opened->lib = std::move(set.lib);
+    opened->rules = std::move(set.rules);
+    opened->stamp = set.stamp.substr(0, 12);
+    session_result result;
     result.ready = std::move(opened);
     return result;
 }

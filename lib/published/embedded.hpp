@@ -8,5 +8,7 @@ namespace onehand {
 
 /// Every built-in file in name order: "tables/....toml", "kinds/....toml", "<rule id>.toml", ...
 std::vector<rule_text> embedded_rules();
+/// SHA-256 of all their names and texts, hexadecimal.
+std::string embedded_stamp();
 
 } // namespace onehand

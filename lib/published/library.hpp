@@ -22,6 +22,8 @@ struct source {
     std::string year;
     std::string seen; // what was seen and where; what is from memory
     place at;
+
+    friend bool operator==(const source&, const source&) = default;
 };
 
 /// What a figure rests on: source key, clause or table, basis.
@@ -30,6 +32,8 @@ struct citation {
     std::string clause;
     basis rests_on = basis::practice;
     place at;
+
+    friend bool operator==(const citation&, const citation&) = default;
 };
 
 /// How a table may be read between its printed rows.
@@ -41,6 +45,8 @@ struct table {
         std::string name; // "PD2-III", "ES2", "limiting-voltage"
         std::string unit; // as printed, "mm"
         dimension dim{};
+
+        friend bool operator==(const column&, const column&) = default;
     };
     std::string id;
     std::string title;
@@ -65,9 +71,13 @@ struct table {
         std::string column;
         std::string gives; // empty: must be refused
         place where;
+
+        friend bool operator==(const check&, const check&) = default;
     };
     std::vector<check> checks;
     place at;
+
+    friend bool operator==(const table&, const table&) = default;
 };
 
 /// The extremes of a table column over an axis spread, every printed row inside the spread counted. Empty with a reason outside the printed rows or
@@ -100,6 +110,8 @@ struct field_spec {
     std::string bounds;       // which fact this rating bounds: "voltage", "power", "current"
     std::string per;          // may be written per this other field (a cable's capacitance per length)
     place at;
+
+    friend bool operator==(const field_spec&, const field_spec&) = default;
 };
 
 /// How terminals are written: `nets = [a, b]`, or one key a terminal.
@@ -108,10 +120,14 @@ struct terminal_key {
     int count = 1;   // 1: one net as text; n > 1: an array of n nets; 0: an array of one or more nets; -1: an array of pairs (connector poles)
     std::vector<std::string> names; // canonical terminal names it fills ("first","second"); a star is replaced by 1, 2, ... ("cathode-*")
     bool optional = false;
+
+    friend bool operator==(const terminal_key&, const terminal_key&) = default;
 };
 struct terminal_form {
     std::vector<terminal_key> keys;
     bool polarised = false;
+
+    friend bool operator==(const terminal_form&, const terminal_form&) = default;
 };
 
 /// One ideal element between two canonical terminals, as solved in given states.
@@ -124,6 +140,8 @@ struct element_spec {
     std::vector<std::string> states;          // empty: all; else "running", "no-load", "standby", "switched-off", "start-up"
     bool holds_charge_path = false;           // a soldered resistive path: counts for discharge (law 4)
     place at;
+
+    friend bool operator==(const element_spec&, const element_spec&) = default;
 };
 
 struct failure_spec {
@@ -131,6 +149,8 @@ struct failure_spec {
     std::string meaning;
     std::vector<element_spec> elements; // what replaces the elements between the same terminals
     citation from;
+
+    friend bool operator==(const failure_spec&, const failure_spec&) = default;
 };
 
 /// A kind of part as rules/kinds/<name>.toml describes it.
@@ -147,6 +167,8 @@ struct kind_spec {
     place at;
 
     const field_spec* find(const std::string& field) const;
+
+    friend bool operator==(const kind_spec&, const kind_spec&) = default;
 };
 
 /// Facts of an example as written: name and figure, a truth as "true" or "false".
@@ -160,6 +182,8 @@ struct class_text {
         std::string holds; // expression
         place holds_at;
         bool basic_text = true;
+
+        friend bool operator==(const step&, const step&) = default;
     };
     std::string id;
     std::string title;
@@ -173,10 +197,14 @@ struct class_text {
         std::vector<std::string> missing;
         given_figures given;
         place at;
+
+        friend bool operator==(const example&, const example&) = default;
     };
     std::vector<step> steps;
     std::vector<example> examples;
     place at;
+
+    friend bool operator==(const class_text&, const class_text&) = default;
 };
 
 /// A limit set: the rules that cite one of these sources; the settings that pick it.
@@ -186,6 +214,8 @@ struct limit_set {
     std::vector<std::string> settings; // "teaching lab", ...
     std::string note;
     place at;
+
+    friend bool operator==(const limit_set&, const limit_set&) = default;
 };
 
 struct library {

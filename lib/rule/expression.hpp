@@ -50,6 +50,8 @@ struct expression {
     value::type type = value::type::number;
     dimension dim{};
     bool solved = false;
+
+    friend bool operator==(const expression&, const expression&) = default;
 };
 
 /// Parses the text; complaints are added and nothing is returned if it is no expression.

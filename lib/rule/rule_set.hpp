@@ -13,6 +13,8 @@ struct rule_example {
     std::vector<std::string> missing;
     given_figures given;
     place at;
+
+    friend bool operator==(const rule_example&, const rule_example&) = default;
 };
 
 struct rule {
@@ -25,12 +27,16 @@ struct rule {
     std::string settles; // the measurement or datum that settles a marginal or a not-shown; empty: told from what is missing
     bool gather = false;
     verdict at_worst = verdict::fail; // a breach is told as no more than this: what would make it a failure is judged by another rule
+
+    friend bool operator==(const rule&, const rule&) = default;
 };
 
 struct compiled_class {
     class_text text;
     std::vector<state> states;
     std::vector<expression> holds;
+
+    friend bool operator==(const compiled_class&, const compiled_class&) = default;
 };
 
 struct rule_set {

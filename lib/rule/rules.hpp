@@ -63,10 +63,14 @@ struct rule_view {
     struct example {
         std::string name, verdict;
         std::vector<std::pair<std::string, std::string>> given;
+
+        friend bool operator==(const example&, const example&) = default;
     };
     std::vector<example> examples;
     place at;
     bool shop = false;
+
+    friend bool operator==(const rule_view&, const rule_view&) = default;
 };
 std::vector<rule_view> view_rules(const rule_set& rules, const library& lib);
 

@@ -15,10 +15,11 @@ median() {
     done | sort -n | sed -n "$((runs / 2 + 1))p"
 }
 cmake -S . -B build/bench -G Ninja -DONEHAND_BENCH=ON -DCMAKE_BUILD_TYPE=Release >/dev/null
-cmake --build build/bench --target parse_only onehand
+cmake --build build/bench --target parse_only load_share onehand
 for sample in samples/*.toml; do
     parse=$(median build/bench/tests/bench/parse_only "$sample")
     audit=$(median build/bench/cli/onehand audit "$sample")
     kinds=$(median build/bench/cli/onehand kinds)
-    echo "$sample: audit/parse $(echo "scale=1; $audit/$parse" | bc), rules loaded/parse $(echo "scale=1; $kinds/$parse" | bc)"
+    awk -v name="$sample" -v a="$audit" -v k="$kinds" -v p="$parse" 'BEGIN { printf "%s: whole process, audit/parse %.1f, rules loaded/parse %.1f\n", name, a / p, k / p }'
 done
+build/bench/tests/bench/load_share samples/*.toml
