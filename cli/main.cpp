@@ -161,6 +161,12 @@ int audited(const options& o, const session& s)
     return gravest(codes);
 }
 
+int refused(const std::string& why)
+{
+    std::fputs(why.c_str(), stderr);
+    return 2;
+}
+
 int run(const options& o)
 {
     int code = 0;
@@ -172,23 +178,17 @@ int run(const options& o)
     if (o.command == "cite") {
         bool found = false;
         const std::string text = cite_text(library_of(s), rules_of(s), o.word, found);
-        if (!found) {
-            std::fputs(text.c_str(), stderr);
-            return 2;
-        }
-        return deliver(o, text);
+        return found ? deliver(o, text) : refused(text);
     }
     if (o.command == "rules") {
-        return deliver(o, rules_text(library_of(s), rules_of(s), o.limit_sets.empty() ? "" : o.limit_sets.front()));
+        bool found = false;
+        const std::string text = rules_text(library_of(s), rules_of(s), o.limit_sets, found);
+        return found ? deliver(o, text) : refused(text);
     }
     if (o.command == "kinds") {
         bool found = false;
         const std::string text = kinds_text(library_of(s), o.word, found);
-        if (!found) {
-            std::fputs(text.c_str(), stderr);
-            return 2;
-        }
-        return deliver(o, text);
+        return found ? deliver(o, text) : refused(text);
     }
     return audited(o, s);
 }

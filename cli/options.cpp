@@ -43,8 +43,8 @@ options read_options(int count, char** words)
     CLI::App* cite = app.add_subcommand("cite", "a rule, table, class or source whole, by id, standard or word");
     cite->add_option("word", o.word, "id, standard or word")->required();
     add_common(*cite, o);
-    CLI::App* rules = app.add_subcommand("rules", "the rules, one line each");
-    rules->add_option("--limit-sets", o.limit_sets, "only those of this set")->take_all()->expected(1);
+    CLI::App* rules = app.add_subcommand("rules", "the limit sets with their rules, classes and tables");
+    rules->add_option("--limit-sets", o.limit_sets, "only this set; may be repeated")->take_all()->expected(1);
     add_common(*rules, o);
     CLI::App* kinds = app.add_subcommand("kinds", "the kinds of part, or one with its fields");
     kinds->add_option("name", o.word, "a kind");

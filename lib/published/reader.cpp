@@ -129,6 +129,19 @@ void read_limit_sets(const document& doc, library& lib, std::vector<complaint>& 
         table_reader r(doc, e.value, e.key_at, complaints);
         limit_set s{e.key, r.texts("sources", true), r.texts("settings", true), r.text("note", false), e.key_at};
         r.finish();
+        if (const limit_set* there = lib.find_limit_set(e.key)) {
+            complaints.push_back(doc.contradict(e.key_at, "limit set '" + e.key + "' is there already", there->at));
+            continue;
+        }
+        static const std::vector<std::string> known{"teaching lab", "repair bench", "display equipment"};
+        for (const std::string& setting : s.settings) {
+            if (std::find(known.begin(), known.end(), setting) == known.end()) {
+                const std::string near = nearest_name(setting, known);
+                complaints.push_back(doc.complain(r.place_of("settings"), "no setting '" + setting +
+                                                                              "': " + (near.empty() ? "" : "nearest known name: " + near + "; ") +
+                                                                              "teaching lab, repair bench or display equipment"));
+            }
+        }
         for (const std::string& key : s.sources) {
             if (lib.find_source(key) == nullptr) {
                 complaints.push_back(doc.complain(r.place_of("sources"), "no source '" + key + "' in sources.toml"));

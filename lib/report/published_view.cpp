@@ -181,57 +181,151 @@ std::string kind_whole(const kind_spec& k)
 
 } // namespace
 
-std::string cite_text(const library& lib, const rule_set& rules, const std::string& word, bool& found)
+namespace {
+
+struct hit {
+    bool exact = false;
+    std::string line; // "table resistor-body: Resistor bodies ..."
+    std::string whole;
+};
+
+std::vector<hit> hits_of(const library& lib, const rule_set& rules, const std::string& word)
 {
-    const std::vector<rule_view> views = view_rules(rules, lib);
-    std::vector<std::pair<bool, std::string>> hits; // exact id first
-    for (const rule_view& r : views) {
-        const source* s = lib.find_source(r.from.cite);
-        if (has(r.id, word) || has(r.title, word) || has(r.limit_set, word) || (s != nullptr && has(s->title, word))) {
-            hits.emplace_back(r.id == word, rule_whole(lib, r));
+    std::vector<hit> hits;
+    const auto add = [&](const char* sort, const std::string& id, const std::string& title, std::string whole) {
+        hits.push_back({id == word, std::string(sort) + ' ' + id + ": " + title, std::move(whole)});
+    };
+    const auto standard = [&](const citation& c) {
+        const source* s = lib.find_source(c.cite);
+        return has(c.cite, word) || has(c.clause, word) || (s != nullptr && has(s->title, word));
+    };
+    for (const rule_view& r : view_rules(rules, lib)) {
+        if (has(r.id, word) || has(r.title, word) || has(r.limit_set, word) || has(r.why, word) || standard(r.from)) {
+            add("rule", r.id, r.title, rule_whole(lib, r));
         }
     }
     for (const table& t : lib.tables) {
-        if (has(t.id, word) || has(t.title, word)) {
-            hits.emplace_back(t.id == word, table_whole(lib, t));
+        if (has(t.id, word) || has(t.title, word) || has(t.conditions, word) || standard(t.from)) {
+            add("table", t.id, t.title, table_whole(lib, t));
         }
     }
     for (const class_text& c : lib.classes) {
-        if (has(c.id, word) || has(c.title, word)) {
-            hits.emplace_back(c.id == word, class_whole(lib, c));
+        if (has(c.id, word) || has(c.title, word) || standard(c.from)) {
+            add("class", c.id, c.title, class_whole(lib, c));
         }
     }
     for (const source& s : lib.sources) {
         if (has(s.key, word) || has(s.title, word)) {
-            hits.emplace_back(s.key == word, source_whole(s));
+            add("source", s.key, s.title, source_whole(s));
         }
     }
+    return hits;
+}
+
+} // namespace
+
+std::string cite_text(const library& lib, const rule_set& rules, const std::string& word, bool& found)
+{
+    constexpr std::size_t printed_whole = 3;
+    const std::vector<hit> hits = hits_of(lib, rules, word);
     found = !hits.empty() && !word.empty();
     if (!found) {
-        const std::string near = nearest_name(word, all_ids(lib, views));
+        const std::string near = nearest_name(word, all_ids(lib, view_rules(rules, lib)));
         return "nothing is known by '" + word + "'" + (near.empty() ? "" : "; nearest known name: " + near) + '\n';
     }
-    const bool exact = std::any_of(hits.begin(), hits.end(), [](const auto& h) { return h.first; });
+    const bool exact = std::any_of(hits.begin(), hits.end(), [](const hit& h) { return h.exact; });
     std::string out;
-    for (const auto& [is_exact, text] : hits) {
-        if (!exact || is_exact) {
-            out += (out.empty() ? "" : "\n") + text;
+    for (const hit& h : hits) {
+        if (exact ? h.exact : hits.size() <= printed_whole) {
+            out += (out.empty() ? "" : "\n") + h.whole;
         }
+    }
+    if (exact && hits.size() > 1) {
+        out += "\nHave it in them too:\n";
+    }
+    if (out.empty() || (exact && hits.size() > 1)) {
+        for (const hit& h : hits) {
+            out += h.exact ? "" : item("", h.line);
+        }
+        out += fmt::format("{} have '{}' in them; cite ID prints one whole\n", hits.size(), word);
     }
     return out;
 }
 
-std::string rules_text(const library& lib, const rule_set& rules, const std::string& limit_set)
+namespace {
+
+std::string set_lines(const library& lib, const std::vector<rule_view>& views, const limit_set& set, const set_counts& counts)
 {
-    std::string out;
-    int count = 0;
-    for (const rule_view& r : view_rules(rules, lib)) {
-        if (limit_set.empty() || r.limit_set == limit_set) {
-            out += padded(r.id, 34) + padded(word_for(r.signal), 9) + padded(word_for(r.from.rests_on), 11) + r.limit_set + '\n';
-            ++count;
+    std::string out = item("", set.name + ": " + set.note);
+    out += item("  used for  ", set.settings.empty() ? "what names it: no setting picks it" : listed(set.settings));
+    for (const rule_view& r : views) {
+        if (std::find(counts.rules.begin(), counts.rules.end(), r.id) != counts.rules.end()) {
+            out += "  rule   " + padded(r.id, 36) + ' ' + padded(word_for(r.signal), 9) + word_for(r.from.rests_on) + '\n';
         }
     }
-    return out + fmt::format("{} rules; cite ID prints one whole\n", count);
+    for (const std::string& id : counts.classes) {
+        out += "  class  " + padded(id, 46) + word_for(lib.find_class(id)->from.rests_on) + '\n';
+    }
+    for (const std::string& id : counts.tables) {
+        out += "  table  " + padded(id, 46) + word_for(lib.find_table(id)->from.rests_on) + '\n';
+    }
+    return out;
+}
+
+/// Rules of no set are in force always.
+std::string practice_lines(const std::vector<rule_view>& views)
+{
+    std::string out;
+    for (const rule_view& r : views) {
+        if (r.limit_set == "practice") {
+            out += "  rule   " + padded(r.id, 36) + ' ' + padded(word_for(r.signal), 9) + word_for(r.from.rests_on) + '\n';
+        }
+    }
+    return out.empty() ? out : item("", "Of no set, always in force:") + out;
+}
+
+} // namespace
+
+std::string rules_text(const library& lib, const rule_set& rules, const std::vector<std::string>& limit_sets, bool& found)
+{
+    found = true;
+    std::vector<std::string> known;
+    for (const limit_set& l : lib.limit_sets) {
+        known.push_back(l.name);
+    }
+    for (const std::string& asked : limit_sets) {
+        if (lib.find_limit_set(asked) == nullptr) {
+            found = false;
+            const std::string near = nearest_name(asked, known);
+            return "no limit set '" + asked + "'" + (near.empty() ? "" : "; nearest known name: " + near) + "; there are: " + listed(known) + '\n';
+        }
+    }
+    const std::vector<rule_view> views = view_rules(rules, lib);
+    const std::vector<set_counts> counts = count_by_set(rules, lib);
+    std::string out;
+    for (std::size_t i = 0; i < lib.limit_sets.size(); ++i) {
+        const limit_set& set = lib.limit_sets[i];
+        if (limit_sets.empty() || std::find(limit_sets.begin(), limit_sets.end(), set.name) != limit_sets.end()) {
+            out += (out.empty() ? "" : "\n") + set_lines(lib, views, set, counts[i]);
+        }
+    }
+    if (limit_sets.empty()) {
+        out += '\n' + practice_lines(views) + fmt::format("\n{} rules; cite ID prints one whole\n", views.size());
+    }
+    return out;
+}
+
+std::string limit_set_table(const library& lib, const rule_set& rules)
+{
+    std::string out = "| limit set | picked by setting | rules | figures confirmed | from memory | practice |\n|---|---|---|---|---|---|\n";
+    const std::vector<set_counts> counts = count_by_set(rules, lib);
+    for (std::size_t i = 0; i < lib.limit_sets.size(); ++i) {
+        const limit_set& set = lib.limit_sets[i];
+        const set_counts& c = counts[i];
+        out += fmt::format("| {} | {} | {} | {} | {} | {} |\n", set.name, set.settings.empty() ? "when named" : listed(set.settings), c.rules.size(),
+                           c.confirmed, c.memory, c.practice);
+    }
+    return out;
 }
 
 std::string kinds_text(const library& lib, const std::string& kind, bool& found)

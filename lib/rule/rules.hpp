@@ -72,6 +72,16 @@ struct rule_view {
 
     friend bool operator==(const rule_view&, const rule_view&) = default;
 };
+/// What a limit set holds, with its figures (constants of rules and classes, printed cells of tables) by how they are known. A rule or table that
+/// rests on memory in part counts as memory whole.
+struct set_counts {
+    std::string limit_set;
+    std::vector<std::string> rules, classes, tables;
+    int confirmed = 0;
+    int memory = 0;
+    int practice = 0;
+};
+std::vector<set_counts> count_by_set(const rule_set& rules, const library& lib);
 std::vector<rule_view> view_rules(const rule_set& rules, const library& lib);
 
 } // namespace onehand

@@ -46,6 +46,9 @@ expect "cite a table" 0 "200  400" bash -c "$onehand cite iec-62368-1-charged-ca
 expect "cite a rule" 0 "limiting element voltage" "$onehand" cite resistor-limiting-voltage
 expect "cite a standard" 0 "table iec-60664-1-creepage" "$onehand" cite "IEC 60664-1"
 expect "cite nothing" 2 "nothing is known by" "$onehand" cite zzzz
+expect "rules of a set" 0 "used for  teaching lab" "$onehand" rules --limit-sets "IEC 60664-1"
+expect "rules of no set" 2 "nearest known name: IEC 60664-1" "$onehand" rules --limit-sets "IEC 60664"
+expect "cite a clause" 0 "rule access-class" "$onehand" cite "table 4"
 expect "rules" 0 "rules; cite ID" "$onehand" rules
 expect "kinds" 0 "display-tube" "$onehand" kinds
 expect "a kind" 0 "limiting-voltage" "$onehand" kinds resistor
@@ -62,6 +65,8 @@ expect "output" 0 "" "$onehand" audit "$work/own.toml" --output "$work/report.tx
 grep -q "NO OBJECTION FOUND" "$work/report.txt" || { echo "FAILED: no report written"; failed=1; }
 expect "output nowhere" 3 "" "$onehand" audit "$work/own.toml" --output "$work/none/report.txt"
 mkdir "$work/shop"
+expect "the sample shop rules" 1 "Creepage with half as much again" "$onehand" audit --rules samples/shop-rules samples/tide-clock-as-built.toml
+expect "the sample shop rules are a set" 0 "Harbour bench: what this bench asks" "$onehand" rules --rules samples/shop-rules --limit-sets "Harbour bench"
 cp rules/resistor-limiting-voltage.toml "$work/shop/house-resistor.toml"
 sed -i 's/<= limiting-voltage/<= 0.5 * limiting-voltage/' "$work/shop/house-resistor.toml"
 expect "shop rules stricter" 1 "house-resistor" "$onehand" audit --format json --rules "$work/shop" samples/tide-clock-corrected.toml --set K1.spike="40 V" --set R7.limiting-voltage="150 V"

@@ -1,6 +1,7 @@
 // Recorded reports of every sample. ONEHAND_RECORD=1 in the environment writes them anew; CI never does.
 #include "audit/audit.hpp"
 #include "report/json.hpp"
+#include "report/published_view.hpp"
 #include "report/text.hpp"
 
 #include <doctest/doctest.h>
@@ -79,6 +80,19 @@ TEST_CASE("text and JSON of every sample are as recorded")
         // The stamp of the rules changes with every rule: it is not part of the record.
         compare(source_root / "tests/recorded" / (stem + ".json"), json_report({{&o}}, "0", "0"));
     }
+}
+
+TEST_CASE("the table of limit sets in README is current")
+{
+    const std::string from = "<!-- limit sets: written by tests/report, do not edit -->\n";
+    const std::string to = "<!-- limit sets end -->";
+    std::string readme = slurp(source_root / "README.md");
+    const std::size_t a = readme.find(from);
+    const std::size_t b = readme.find(to);
+    REQUIRE(a != std::string::npos);
+    REQUIRE(b != std::string::npos);
+    readme.replace(a, b - a, from + '\n' + limit_set_table(library_of(opened()), rules_of(opened())) + '\n');
+    compare(source_root / "README.md", readme);
 }
 
 TEST_CASE("no recording without a sample")

@@ -5,7 +5,10 @@
 #include <doctest/doctest.h>
 
 #include <algorithm>
+#include <filesystem>
+#include <fstream>
 #include <set>
+#include <sstream>
 
 using namespace onehand;
 
@@ -85,6 +88,35 @@ TEST_CASE("every example of every rule comes out")
         CAPTURE(r.example);
         CHECK(r.got == r.expected);
     }
+}
+
+TEST_CASE("the sample shop rules load and their examples come out")
+{
+    std::vector<rule_text> own;
+    for (const auto& file : std::filesystem::directory_iterator(std::string(ONEHAND_SOURCE) + "/samples/shop-rules")) {
+        std::ifstream in(file.path());
+        std::stringstream text;
+        text << in.rdbuf();
+        own.push_back({"shop-rules/" + file.path().filename().string(), text.str()});
+    }
+    const loaded_rules with_own = load(own);
+    CHECK(format_complaints(with_own.complaints) == "");
+    REQUIRE(with_own.rules);
+    CHECK(view_rules(*with_own.rules, with_own.lib).size() == view_rules(*shipped().rules, shipped().lib).size() + own.size() - 2);
+    for (const example_result& r : run_examples(*with_own.rules, with_own.lib)) {
+        CAPTURE(r.rule);
+        CAPTURE(r.example);
+        CHECK(r.got == r.expected);
+    }
+}
+
+TEST_CASE("a shop's limit set that is there already or knows no place is refused")
+{
+    const auto refused = [](const std::string& text) { return format_complaints(load({{"shop/limit-sets.toml", text}}).complaints); };
+    CHECK(refused("[\"IEC 61010-1\"]\nsources = [\"practice\"]\nsettings = []\n").find("limit set 'IEC 61010-1' is there already") !=
+          std::string::npos);
+    CHECK(refused("[\"Own\"]\nsources = [\"practice\"]\nsettings = [\"teaching labs\"]\n").find("nearest known name: teaching lab") !=
+          std::string::npos);
 }
 
 TEST_CASE("every rule has its verdicts in examples and speaks plainly")
