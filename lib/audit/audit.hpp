@@ -110,8 +110,10 @@ struct spacing_facts {
         bool floor = false; // from a "*" gap
     };
     std::vector<measured_gap> measured;
-    std::string governs;
-    std::string covered; // "gap", "floor", "none"
+    std::string insulation;
+    std::string clearance_governs, creepage_governs; // the set that asks most; empty: none told
+    std::string covered;                             // "gap", "floor", "none"
+    verdict kept = verdict::not_shown; // measured against all that is asked; functional and not kept is marginal: what a bridge does is judged apart
 };
 
 struct label_facts {

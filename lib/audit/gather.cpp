@@ -94,7 +94,7 @@ audit_result gather(const supply& s, const session& opened, const std::vector<st
     r.accesses = access_section(solved, r.judged);
     r.stored = stored_section(solved, r.judged);
     r.discharges = discharge_section(solved, sets);
-    r.spacings = spacing_section(solved);
+    r.spacings = spacing_section(solved, sets);
     r.label = label_section(solved);
     const bool time_known = r.label && r.label->wait.known() && !r.label->wait.never && !r.label->wait.numbers.empty();
     r.concluded = conclude(r.judged.findings, time_known);

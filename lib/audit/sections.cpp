@@ -109,31 +109,4 @@ std::vector<stored_facts> stored_section(const solved_supply& s, const judgement
     return list;
 }
 
-std::vector<spacing_facts> spacing_section(const solved_supply& s)
-{
-    std::vector<spacing_facts> list;
-    for (const pair_item& p : s.pairs()) {
-        spacing_facts f;
-        f.about = p.about;
-        f.working_voltage = p.voltage;
-        f.covered = p.covered;
-        const gap* g = gap_for(s.written(), p.about.nets[0], p.about.nets[1]);
-        const std::map<std::string, int> circuits = circuits_of(s.bodies(), s.data());
-        const std::string insulation = g != nullptr && g->insulation && g->insulation->text() != nullptr
-                                           ? *g->insulation->text()
-                                           : default_insulation(p.about.nets[0], p.about.nets[1], circuits, touchable_nets(s.written()));
-        const std::optional<field> none;
-        const spacing_need need =
-            spacing_needed(p.voltage, insulation, g != nullptr ? g->surface : none, g != nullptr ? g->cti : none, s.written().used, s.data());
-        f.asked.push_back({"IEC 60664-1", need.clearance, need.creepage});
-        f.governs = "IEC 60664-1, " + insulation;
-        if (g != nullptr) {
-            f.measured.push_back({g->where, written_value(g->clearance, value::type::number, "clearance"),
-                                  written_value(g->creepage, value::type::number, "creepage"), p.covered == "floor"});
-        }
-        list.push_back(std::move(f));
-    }
-    return list;
-}
-
 } // namespace onehand

@@ -198,7 +198,9 @@ json of_spacing(const spacing_facts& s)
     for (const auto& r : s.asked) {
         j["required"][r.limit_set] = {{"clearance", of_value(r.clearance)}, {"creepage", of_value(r.creepage)}};
     }
-    j["governs"] = s.governs;
+    j["insulation"] = s.insulation;
+    j["governs"] = {{"clearance", s.clearance_governs}, {"creepage", s.creepage_governs}};
+    j["verdict"] = word_for(s.kept);
     j["measured"] = json::array();
     for (const auto& m : s.measured) {
         json one;

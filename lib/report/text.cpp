@@ -30,23 +30,14 @@ public:
             parts();
         }
         tail();
-        return std::move(out_);
+        return std::move(out_) + last_line();
     }
 
     std::string discharge_only()
     {
         line(r_.name);
         discharges();
-        closing();
-        return std::move(out_);
-    }
-
-    std::string spacing_only()
-    {
-        line(r_.name);
-        spacings();
-        closing();
-        return std::move(out_);
+        return std::move(out_) + closing_lines(r_);
     }
 
 private:
@@ -342,7 +333,7 @@ private:
         if (r_.spacings.empty()) {
             return;
         }
-        title("Spacings above 60 V, highest first");
+        title("Spacings, highest voltage first: the most that any set asks");
         line("  " + padded("pair", 16) + padded("voltage", 10) + padded("creepage asked", 15) + padded("measured", 13) +
              padded("clearance asked", 16) + "measured");
         std::size_t shown = 0;
@@ -356,13 +347,24 @@ private:
             ++shown;
             const std::string mark = s.covered == "floor" ? " floor" : "";
             const bool there = !s.measured.empty();
-            line("  " + padded(s.about.name, 16) + padded(greatest(s.working_voltage), 10) + padded(greatest(s.asked.front().creepage, 3), 15) +
-                 padded(there ? greatest(s.measured.front().creepage, 3) + mark : "none", 13) + padded(greatest(s.asked.front().clearance, 3), 16) +
-                 (there ? greatest(s.measured.front().clearance, 3) + mark : "none"));
+            line("  " + padded(s.about.name, 16) + padded(greatest(s.working_voltage), 10) + padded(most_asked(s, s.creepage_governs, true), 15) +
+                 padded(there ? greatest(s.measured.front().creepage, 3) + mark : "none", 13) +
+                 padded(most_asked(s, s.clearance_governs, false), 16) + (there ? greatest(s.measured.front().clearance, 3) + mark : "none"));
         }
         if (shown < r_.spacings.size()) {
             line(fmt::format("  and {} more pairs: --show-working lists them all", r_.spacings.size() - shown));
         }
+        line("  the command spacing tells each set's figures side by side");
+    }
+
+    static std::string most_asked(const spacing_facts& s, const std::string& governs, bool creepage)
+    {
+        for (const auto& asked : s.asked) {
+            if (asked.limit_set == governs) {
+                return greatest(creepage ? asked.creepage : asked.clearance, 3);
+            }
+        }
+        return s.asked.empty() ? "-" : "unknown";
     }
 
     void nets()
@@ -397,18 +399,7 @@ private:
                 item("  ", a);
             }
         }
-        title("Limit sets");
-        std::string used;
-        for (const std::string& s : r_.limit_sets) {
-            used += (used.empty() ? "" : ", ") + s;
-        }
-        item("  used: ", used);
-        for (const std::string& s : r_.left_out) {
-            item("  left out: ", s);
-        }
-        for (const std::string& s : r_.loosened) {
-            item("  loosened: ", s);
-        }
+        out_ += limit_set_lines(r_);
         title("Not looked at");
         for (const std::string& s : r_.not_seen) {
             item("  ", s);
@@ -417,13 +408,6 @@ private:
         for (const std::string& s : r_.cautions) {
             item("  ", s);
         }
-        closing();
-    }
-
-    void closing()
-    {
-        line();
-        text("An aid to a competent person, no certificate. Local codes and licensed practice come first.");
     }
 
     const audit_result& r_;
@@ -441,11 +425,6 @@ std::string text_report(const audit_result& r, const text_options& options)
 std::string discharge_report(const audit_result& r, const text_options& options)
 {
     return writer(r, options).discharge_only();
-}
-
-std::string spacing_report(const audit_result& r, const text_options& options)
-{
-    return writer(r, options).spacing_only();
 }
 
 } // namespace onehand

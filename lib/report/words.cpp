@@ -83,4 +83,39 @@ std::string source_words(const library* lib, const citation& c)
     return title + ", " + c.clause + " [" + basis + "]";
 }
 
+namespace {
+
+std::string wrapped_item(const std::string& lead, const std::string& words)
+{
+    std::string out;
+    for (const std::string& l : wrapped(lead + words, 80, columns_of(lead))) {
+        out += l + '\n';
+    }
+    return out;
+}
+
+} // namespace
+
+std::string limit_set_lines(const audit_result& r)
+{
+    std::string out = "\nLimit sets\n" + wrapped_item("  used: ", listed(r.limit_sets));
+    for (const std::string& s : r.left_out) {
+        out += wrapped_item("  left out: ", s);
+    }
+    for (const std::string& s : r.loosened) {
+        out += wrapped_item("  loosened: ", s);
+    }
+    return out;
+}
+
+std::string last_line()
+{
+    return '\n' + wrapped_item("", "An aid to a competent person, no certificate. Local codes and licensed practice come first.");
+}
+
+std::string closing_lines(const audit_result& r)
+{
+    return limit_set_lines(r) + last_line();
+}
+
 } // namespace onehand

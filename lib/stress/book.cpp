@@ -97,60 +97,6 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
     return kind->find(name) != nullptr ? field_value(*p, *kind, lib_, name) : no_fact(s, name);
 }
 
-value solved_supply::gap_fact(const subject& s, const std::string& name) const
-{
-    const gap_item* g = item_of(gaps_, s);
-    if (g == nullptr) {
-        return no_fact(s, name);
-    }
-    if (name == "voltage") {
-        return g->voltage;
-    }
-    if (name == "person-side") {
-        return truth_of(g->person_side);
-    }
-    if (name == "insulation") {
-        return choice_of(g->insulation);
-    }
-    if (name == "bridge-worse") {
-        return truth_of(g->bridge_worse);
-    }
-    if (name == "required-creepage") {
-        return g->need.creepage;
-    }
-    if (name == "required-clearance") {
-        return g->need.clearance;
-    }
-    if (name == "clearance") {
-        return written_value(g->written->clearance, value::type::number, s.name + ".clearance");
-    }
-    if (name == "creepage") {
-        return written_value(g->written->creepage, value::type::number, s.name + ".creepage");
-    }
-    if (name == "pollution-degree") {
-        return written_value(bodies_.used.pollution_degree, value::type::number, "use.pollution-degree");
-    }
-    return no_fact(s, name);
-}
-
-value solved_supply::pair_fact(const subject& s, const std::string& name) const
-{
-    const pair_item* p = item_of(pairs_, s);
-    if (p == nullptr) {
-        return no_fact(s, name);
-    }
-    if (name == "voltage") {
-        return p->voltage;
-    }
-    if (name == "person-side") {
-        return truth_of(p->person_side);
-    }
-    if (name == "covered") {
-        return choice_of(p->covered);
-    }
-    return no_fact(s, name);
-}
-
 value solved_supply::stored_fact(const subject& s, const std::string& name) const
 {
     const stored_item* i = item_of(stored_, s);

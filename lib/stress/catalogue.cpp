@@ -53,7 +53,21 @@ void add_gaps(std::vector<fact_spec>& list)
     list.push_back(told("gap", "creepage", dim::length, "measured distance along the surface"));
     list.push_back(told("gap", "required-creepage", dim::length,
                         "IEC 60664-1 creepage at the working voltage, pollution degree and material; twice for reinforced"));
-    list.push_back(told("gap", "required-clearance", dim::length, "IEC 60664-1 steady-state clearance, least by pollution degree, altitude counted"));
+    list.push_back(told("gap", "required-clearance", dim::length,
+                        "IEC 60664-1 clearance: steady peak, the mains' transient, least by pollution degree, altitude counted"));
+    list.push_back(told("gap", "iec-61010-1-clearance", dim::length, "IEC 61010-1 table K.11, altitude counted; 0 m inside one circuit"));
+    list.push_back(told("gap", "iec-61010-1-creepage", dim::length, "as IEC 60664-1, twice for reinforced; 0 m inside one circuit"));
+    list.push_back(told("gap", "iec-62368-1-clearance", dim::length, "IEC 62368-1 tables 10 and 14, altitude counted; 0 m inside one circuit"));
+    list.push_back(told("gap", "iec-62368-1-creepage", dim::length, "IEC 62368-1 table 17, twice for reinforced; 0 m inside one circuit"));
+    list.push_back(told("gap", "ipc-2221-spacing", dim::length, "IPC-2221 table 6-1 at its column"));
+    list.push_back(
+        choice("gap", "board-column", "IPC-2221 column by surface, coating, layer and altitude", {"none", "B1", "B2", "B3", "B4", "A5", "A6", "A7"}));
+    list.push_back(told("gap", "least-distance", dim::length, "lesser of clearance and creepage"));
+    list.push_back(truth("gap", "grooved", "a groove or slot is counted in its path"));
+    list.push_back(told("gap", "groove", dim::length, "width of the narrowest groove in the path"));
+    list.push_back(told("gap", "least-groove", dim::length, "X of IEC 60664-1: narrower grooves are measured straight across"));
+    list.push_back(truth("gap", "switches", "one of its nets is the switch node"));
+    list.push_back(told("gap", "switching-frequency", dim::frequency, "of the drive, as written"));
     list.push_back(choice("gap", "insulation", "as written, or by law", {"functional", "basic", "supplementary", "reinforced"}));
     list.push_back(truth("gap", "bridge-worse", "bridging the gap puts hazardous voltage on something that can be touched, or raises a class"));
     list.push_back(told("gap", "pollution-degree", dim::none, "1 to 4"));

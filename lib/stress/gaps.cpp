@@ -68,17 +68,21 @@ void solved_supply::list_gaps()
             item.voltage =
                 v != nullptr ? *v
                              : hull(magnitude(at(state::running).voltage(g.nets[0], other)), magnitude(at(state::no_load).voltage(g.nets[0], other)));
+            item.switches = !output_.switch_net.empty() && (g.nets[0] == output_.switch_net || other == output_.switch_net);
             item.person_side = touchable.contains(g.nets[0]) != touchable.contains(other);
             item.about = {"gap", gap_name(g, item.insulation, floor), {g.nets[0], other}, g.at};
             const auto same = std::find_if(found.begin(), found.end(), [&](const gap_item& i) { return i.insulation == item.insulation; });
             if (same == found.end()) {
                 found.push_back(std::move(item));
-            } else if (graver(item, *same)) {
-                *same = std::move(item);
+            } else {
+                item.switches = same->switches = item.switches || same->switches;
+                if (graver(item, *same)) {
+                    *same = std::move(item);
+                }
             }
         }
         for (gap_item& item : found) {
-            item.need = spacing_needed(item.voltage, item.insulation, g.surface, g.cti, written_.used, lib_);
+            item.need = spacing_needed(item.voltage, item.site(written_, lib_));
             change bridge;
             bridge.sort = change::what::bridge;
             bridge.nets = item.about.nets;

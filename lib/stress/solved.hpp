@@ -51,7 +51,9 @@ struct gap_item {
     std::string insulation;
     bool person_side = false;
     bool bridge_worse = false;
+    bool switches = false; // the switch node is one of its nets, or of those a floor gap speaks for
     spacing_need need;
+    spacing_site site(const supply& s, const library& lib) const { return {insulation, written, &s.used, &s.fed, &lib}; }
 };
 
 /// One switch-off case for one pair.

@@ -1,198 +1,260 @@
+// The spacings each set asks for one pair.
 #include "stress/spacing.hpp"
 
+#include "stress/fields.hpp"
+#include "stress/spacing_site.hpp"
 #include "stress/spread_math.hpp"
 
 #include <algorithm>
-#include <cmath>
 
 namespace onehand {
 
 namespace {
 
-/// Column names of the creepage table that may hold: the material group of the surface, or all of them where it is unknown.
-struct materials {
-    std::vector<std::string> groups; // "I", "II", "III"
-    bool board_copper = false;
-    std::vector<std::string> missing;
-};
-
-/// IEC 60664-1: group I from CTI 600, II from 400, III (a and b share their columns) from 100; below 100 there is none.
-std::optional<std::string> group_of(double cti)
+bool reinforced(const spacing_site& site)
 {
-    if (cti >= 600.0) {
-        return "I";
-    }
-    if (cti >= 400.0) {
-        return "II";
-    }
-    return cti >= 100.0 ? std::optional<std::string>("III") : std::nullopt;
+    return site.insulation == "reinforced";
 }
 
-void add_group(materials& m, double cti)
+/// Towards what lies outside the circuit; inside it the mains' transients stand on both ends alike.
+bool against_transients(const spacing_site& site)
 {
-    if (const auto g = group_of(cti); g && std::find(m.groups.begin(), m.groups.end(), *g) == m.groups.end()) {
-        m.groups.push_back(*g);
-    } else if (!g) {
-        m.missing.push_back("a surface of CTI 100 or more: none is tabulated below");
-    }
+    return site.insulation != "functional";
 }
 
-materials material_of(const std::optional<field>& surface, const std::optional<field>& cti, const library& lib)
+/// Preferred series of rated impulse voltages: reinforced insulation takes the next step (IEC 60664-1, 5.1.6).
+double next_impulse(double volts, const library& lib)
 {
-    materials m;
-    if (cti && cti->number() != nullptr) {
-        add_group(m, cti->number()->whole.low);
-        return m;
-    }
-    const table* t = lib.find_table("surface-cti");
-    if (surface && surface->text() != nullptr && t != nullptr) {
-        m.board_copper = *surface->text() == "board copper";
-        double least = unbounded;
-        for (const spread& s : look_up_choice(*t, "CTI", *surface->text())) {
-            least = std::min(least, s.whole.low);
-        }
-        if (std::isfinite(least)) {
-            add_group(m, least); // the worst end of what is published of a named surface
-            return m;
+    std::vector<double> series;
+    if (const table* t = lib.find_table("iec-60664-1-impulse")) {
+        for (const auto& row : t->cells) {
+            for (const auto& cell : row) {
+                series.insert(series.end(), cell.begin(), cell.end());
+            }
         }
     }
-    m.groups = {"I", "II", "III"};
-    m.missing.push_back("surface");
-    return m;
+    std::sort(series.begin(), series.end());
+    const auto at = std::upper_bound(series.begin(), series.end(), volts * (1.0 + 1e-9));
+    return at == series.end() ? 1.6 * volts : *at; // beyond the series 160 %
 }
 
-std::optional<int> pollution(const use& u)
+/// The greater of both; where one is unknown, anything from the other up.
+value greater_known(const value& a, const value& b)
 {
-    if (!u.pollution_degree || u.pollution_degree->number() == nullptr) {
-        return std::nullopt;
+    if (a.numbers.empty() || b.numbers.empty()) {
+        value out = a.numbers.empty() ? b : a;
+        for (spread& s : out.numbers) { // at least the known figure
+            s.in_use.high = s.whole.high = unbounded;
+            s.nominal.reset();
+        }
+        inherit(out, a.numbers.empty() ? a : b);
+        return out;
     }
-    return static_cast<int>(std::lround(u.pollution_degree->number()->whole.high));
+    value out = greater(a, b);
+    out.shown = a.shown;
+    out.shown.inputs.insert(out.shown.inputs.end(), b.shown.inputs.begin(), b.shown.inputs.end());
+    return out;
 }
 
-void note_rows(value& v, const table& t, const table_answer& a)
+/// Floor by pollution degree and altitude factor, which every clearance shares.
+void finish_clearance(value& v, const spacing_site& site, const char* least_table, const std::string& least_column)
 {
-    v.shown.inputs.push_back({t.title, a.rows, t.at});
+    const degree_told degree = degree_of(site);
+    if (!degree.degree) {
+        v.numbers.clear();
+        v.missing.push_back(degree.missing);
+        return;
+    }
+    const auto factor = altitude_factor(v, site);
+    const auto least = read_column(v, site, least_table, least_column, exactly({static_cast<double>(*degree.degree), dim::none}));
+    if (!factor || !least) {
+        v.numbers.clear();
+        return;
+    }
+    for (spread& s : v.numbers) {
+        s = times(greatest_of(s, *least), *factor);
+    }
 }
 
-std::vector<std::string> creepage_columns(const materials& m, int degree, double volts)
-{
-    if (m.board_copper && degree <= 2 && volts <= 1000.0) {
-        return {degree == 1 ? "PWB-PD1" : "PWB-PD2"};
-    }
-    if (degree == 1) {
-        return {"PD1"};
-    }
-    std::vector<std::string> columns;
-    for (const std::string& g : m.groups) {
-        columns.push_back("PD" + std::to_string(degree) + "-" + g);
-    }
-    return columns;
-}
-
-value creepage_needed(const spread& volts, const materials& m, int degree, double times, const library& lib)
+value steady_clearance(const spread& volts, const spacing_site& site)
 {
     value v;
-    const table* t = lib.find_table("iec-60664-1-creepage");
-    if (t == nullptr) {
-        return missing_value(value::type::number, {"table iec-60664-1-creepage"});
+    v.shown.formula = reinforced(site)
+                          ? "greater of the clearances at 160 % of the peak and at the next impulse step, least by pollution degree, altitude"
+                          : "greater of the clearances at the peak and at the impulse, least by pollution degree, altitude";
+    if (const auto figure = read_column(v, site, "iec-60664-1-clearance-steady", "case-A", scaled(volts, reinforced(site) ? 1.6 : 1.0))) {
+        v.numbers.push_back(*figure);
     }
-    for (const std::string& column : creepage_columns(m, degree, volts.whole.high)) {
-        // Below the first printed row the first row is asked: more than the table says, never less.
-        const table_answer a = look_up(*t, column, clamped(volts, t->axis.front(), unbounded));
-        if (!a.figure) {
-            v.missing.push_back("creepage: " + a.reason);
-            continue;
-        }
-        v.numbers.push_back(scaled(*a.figure, times));
-        note_rows(v, *t, a);
-    }
-    v.missing.insert(v.missing.end(), m.missing.begin(), m.missing.end());
-    v.shown.formula = times > 1.0 ? "twice the basic creepage at the working voltage" : "creepage at the working voltage";
     return v;
 }
 
-std::optional<spread> altitude_factor(const use& u, const library& lib, value& v)
-{
-    const table* t = lib.find_table("iec-60664-1-altitude");
-    if (!u.altitude || u.altitude->number() == nullptr || t == nullptr) {
-        v.missing.push_back("use.altitude");
-        return std::nullopt;
-    }
-    // Up to 2000 m the tabulated clearances hold as they are; they are never made smaller.
-    const table_answer a = look_up(*t, "factor", clamped(*u.altitude->number(), t->axis.front(), unbounded));
-    if (!a.figure) {
-        v.missing.push_back("altitude: " + a.reason);
-        return std::nullopt;
-    }
-    note_rows(v, *t, a);
-    return *a.figure;
-}
-
-/// The least by pollution degree, whatever the voltage.
-double least_clearance(int degree, const library& lib)
-{
-    const table* t = lib.find_table("iec-60664-1-clearance-least");
-    const table_answer a = t == nullptr ? table_answer{} : look_up(*t, "least", exactly({static_cast<double>(degree), dim::none}));
-    return a.figure ? a.figure->whole.high : 0.0;
-}
-
-value clearance_needed(const spread& volts, int degree, bool reinforced, const use& u, const library& lib)
+value transient_clearance(const value& impulse, const spacing_site& site)
 {
     value v;
-    const table* t = lib.find_table("iec-60664-1-clearance-steady");
-    if (t == nullptr) {
-        return missing_value(value::type::number, {"table iec-60664-1-clearance-steady"});
-    }
-    const spread peak = scaled(volts, reinforced ? 1.6 : 1.0);
-    const table_answer a = look_up(*t, "case-A", clamped(peak, t->axis.front(), unbounded));
-    const auto factor = altitude_factor(u, lib, v);
-    if (!a.figure) {
-        v.missing.push_back("clearance: " + a.reason);
-    }
-    if (!a.figure || !factor) {
+    inherit(v, impulse);
+    const degree_told degree = degree_of(site);
+    if (!degree.degree) {
+        v.missing.push_back(degree.missing);
         return v;
     }
-    note_rows(v, *t, a);
-    const spread floored = clamped(*a.figure, least_clearance(degree, lib), unbounded);
-    v.numbers.push_back({dim::length,
-                         {floored.in_use.low * factor->in_use.low, floored.in_use.high * factor->in_use.high},
-                         {floored.whole.low * factor->whole.low, floored.whole.high * factor->whole.high},
-                         std::nullopt});
-    v.shown.formula = reinforced ? "clearance at 160 % of the peak, least by pollution degree, times altitude"
-                                 : "clearance at the peak, least by pollution degree, times altitude";
+    for (const spread& s : impulse.numbers) {
+        const double peak = s.whole.high;
+        if (peak <= 0.0) {
+            v.numbers.push_back(exactly({0.0, dim::length}));
+            continue;
+        }
+        const double asked = reinforced(site) ? next_impulse(peak, *site.lib) : peak;
+        const std::string column = "A-PD" + std::to_string(*degree.degree);
+        if (const auto figure = read_column(v, site, "iec-60664-1-clearance-transient", column, exactly({asked, dim::voltage}))) {
+            v.numbers.push_back(*figure);
+        }
+    }
     return v;
+}
+
+void add_coordination(spacing_need& need, const value& working, const value& impulse, const spacing_site& site)
+{
+    need.clearance = each_voltage(working, [&](const spread& volts) { return steady_clearance(volts, site); });
+    if (against_transients(site)) {
+        need.clearance = greater_known(need.clearance, transient_clearance(impulse, site));
+    }
+    finish_clearance(need.clearance, site, "iec-60664-1-clearance-least", "least");
+    need.creepage = each_voltage(working, [&](const spread& volts) { return basic_creepage(volts, site, true); });
+    if (reinforced(site)) {
+        need.creepage.shown.formula = "twice the basic creepage at the working voltage";
+        for (spread& s : need.creepage.numbers) {
+            s = scaled(s, 2.0);
+        }
+    }
+}
+
+/// Table K.11: its columns stand for the impulse of the mains they name.
+std::optional<std::string> column_for(double impulse)
+{
+    static const std::pair<double, const char*> columns[] = {{2500.0, "to-150"}, {4000.0, "to-300"}, {6000.0, "to-600"}, {8000.0, "to-1000"}};
+    for (const auto& [volts, name] : columns) {
+        if (impulse <= volts * (1.0 + 1e-9)) {
+            return name;
+        }
+    }
+    return std::nullopt;
+}
+
+void add_laboratory(spacing_need& need, const value& working, const value& impulse, const spacing_site& site)
+{
+    if (!against_transients(site)) {
+        return;
+    }
+    const double times_basic = reinforced(site) ? 2.0 : 1.0;
+    need.lab_clearance = each_voltage(working, [&](const spread& volts) {
+        value v;
+        for (const spread& s : impulse.numbers) {
+            if (s.whole.high <= 0.0) {
+                v.numbers.push_back(exactly({0.0, dim::length})); // no mains, no table: the least by degree remains
+                continue;
+            }
+            const auto column = column_for(s.whole.high);
+            if (!column) {
+                v.missing.emplace_back("a column of table K.11 for so high an impulse");
+            } else if (const auto figure = read_column(v, site, "iec-61010-1-secondary", *column, volts)) {
+                v.numbers.push_back(scaled(*figure, times_basic));
+            }
+        }
+        v.shown.formula = "table K.11 at the working voltage, least by pollution degree, altitude; twice for reinforced";
+        return v;
+    });
+    inherit(need.lab_clearance, impulse);
+    finish_clearance(need.lab_clearance, site, "iec-60664-1-clearance-least", "least");
+    need.lab_creepage = each_voltage(working, [&](const spread& volts) { return basic_creepage(volts, site, true); });
+    for (spread& s : need.lab_creepage.numbers) {
+        s = scaled(s, times_basic);
+    }
+}
+
+void add_equipment(spacing_need& need, const value& working, const value& impulse, const spacing_site& site)
+{
+    if (!against_transients(site)) {
+        return;
+    }
+    const std::string column = reinforced(site) ? "reinforced" : "basic";
+    // Copies disagree whether table 10 is read at the working peak alone or at the transient too: the stricter reading counts.
+    double most_transient = 0.0;
+    for (const spread& s : impulse.numbers) {
+        most_transient = std::max(most_transient, s.whole.high);
+    }
+    const value steady = each_voltage(working, [&](const spread& volts) {
+        value v;
+        if (const auto figure = read_column(v, site, "iec-62368-1-clearance-peak", column, clamped(volts, most_transient, unbounded))) {
+            v.numbers.push_back(*figure);
+        }
+        v.shown.formula = "greater of tables 10 (peak, transient) and 14 (transient), least by pollution degree, altitude";
+        return v;
+    });
+    value transient;
+    inherit(transient, impulse);
+    for (const spread& s : impulse.numbers) {
+        const auto figure = s.whole.high > 0.0
+                                ? read_column(transient, site, "iec-62368-1-clearance-withstand", column, exactly({s.whole.high, dim::voltage}))
+                                : std::optional(exactly({0.0, dim::length}));
+        if (figure) {
+            transient.numbers.push_back(*figure);
+        }
+    }
+    need.equipment_clearance = greater_known(steady, transient);
+    finish_clearance(need.equipment_clearance, site, "iec-62368-1-clearance-least", column);
+    need.equipment_creepage = each_voltage(working, [&](const spread& volts) { return basic_creepage(volts, site, false); });
+    for (spread& s : need.equipment_creepage.numbers) {
+        s = scaled(s, reinforced(site) ? 2.0 : 1.0);
+    }
+}
+
+/// Along a surface never less than through the air beside it.
+value at_least_clearance(const value& creepage, const value& clearance)
+{
+    value out = creepage.numbers.empty() || clearance.numbers.empty() ? greater_known(creepage, clearance) : greater(creepage, clearance);
+    out.shown = creepage.shown;
+    return out;
 }
 
 } // namespace
 
-spacing_need spacing_needed(const value& working_voltage, const std::string& insulation, const std::optional<field>& surface,
-                            const std::optional<field>& cti, const use& used, const library& lib)
+spacing_need spacing_needed(const value& working_voltage, const spacing_site& site)
 {
     spacing_need need;
-    inherit(need.creepage, working_voltage);
-    inherit(need.clearance, working_voltage);
-    const auto degree = pollution(used);
-    if (!degree || *degree < 1 || *degree > 3) {
-        const std::string why = degree ? "pollution degree 4 has no spacing" : "use.pollution-degree";
-        need.creepage.missing.push_back(why);
-        need.clearance.missing.push_back(why);
-        return need;
+    const value impulse = mains_impulse(*site.fed, *site.lib);
+    add_coordination(need, working_voltage, impulse, site);
+    add_laboratory(need, working_voltage, impulse, site);
+    add_equipment(need, working_voltage, impulse, site);
+    add_board(need, working_voltage, site);
+    need.creepage = at_least_clearance(need.creepage, need.clearance);
+    if (against_transients(site)) {
+        need.lab_creepage = at_least_clearance(need.lab_creepage, need.lab_clearance);
+        need.equipment_creepage = at_least_clearance(need.equipment_creepage, need.equipment_clearance);
     }
-    const bool reinforced = insulation == "reinforced";
-    const materials m = material_of(surface, cti, lib);
-    for (const spread& volts : working_voltage.numbers) {
-        value clearance = clearance_needed(volts, *degree, reinforced, used, lib);
-        value creepage = creepage_needed(volts, m, *degree, reinforced ? 2.0 : 1.0, lib);
-        inherit(clearance, need.clearance);
-        inherit(creepage, need.creepage);
-        need.clearance = clearance;
-        // Along a surface never less than through the air beside it.
-        const bool both = !clearance.numbers.empty() && !creepage.numbers.empty();
-        const evidence shown = creepage.shown;
-        need.creepage = both ? greater(creepage, clearance) : creepage;
-        need.creepage.shown = shown;
+    for (value* v : {&need.creepage, &need.clearance, &need.lab_creepage, &need.lab_clearance, &need.equipment_creepage, &need.equipment_clearance,
+                     &need.board}) {
+        if (!v->numbers.empty() || !v->missing.empty()) {
+            inherit(*v, working_voltage);
+        }
     }
     return need;
+}
+
+set_need need_of(const spacing_need& need, const std::string& limit_set)
+{
+    if (limit_set == "IEC 60664-1") {
+        return {&need.clearance, &need.creepage};
+    }
+    if (limit_set == "IEC 61010-1") {
+        return {&need.lab_clearance, &need.lab_creepage};
+    }
+    if (limit_set == "IEC 62368-1") {
+        return {&need.equipment_clearance, &need.equipment_creepage};
+    }
+    if (limit_set == "IPC-2221") {
+        return {&need.board, &need.board};
+    }
+    return {};
 }
 
 } // namespace onehand

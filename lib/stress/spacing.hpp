@@ -1,6 +1,7 @@
 #pragma once
-// What the gaps must be: which nets are one circuit, what can be touched, the insulation a pair needs, and the spacings IEC 60664-1 asks at the
-// pair's working voltage. Beyond 1500 V d.c. the tables are read as guidance only and say so.
+// What the gaps must be: which nets are one circuit, what can be touched, the insulation a pair needs, and the spacings that IEC 60664-1,
+// IEC 61010-1, IEC 62368-1 and IPC-2221 ask at the pair's working voltage, side by side. Beyond 1500 V d.c. the tables are read as guidance only and
+// a rule says so.
 #include "stress/solution.hpp"
 
 namespace onehand {
@@ -15,14 +16,43 @@ std::set<std::string> touchable_nets(const supply& s);
 std::string default_insulation(const std::string& a, const std::string& b, const std::map<std::string, int>& circuits,
                                const std::set<std::string>& touchable);
 
-struct spacing_need {
-    value creepage;
-    value clearance;
+/// Where a spacing stands: what is written of the gap (null: nothing is), of the use and of the input.
+struct spacing_site {
+    std::string insulation; // "functional" | "basic" | "supplementary" | "reinforced"
+    const gap* written = nullptr;
+    const use* used = nullptr;
+    const input* fed = nullptr;
+    const library* lib = nullptr;
 };
-/// IEC 60664-1: creepage by pollution degree and material group, twice for reinforced; clearance at the steady peak (160 % of it for reinforced),
-/// never below the least by pollution degree, altitude counted, and creepage never below clearance.
-spacing_need spacing_needed(const value& working_voltage, const std::string& insulation, const std::optional<field>& surface,
-                            const std::optional<field>& cti, const use& used, const library& lib);
+
+/// What each set asks; a figure without numbers and without anything missing is not asked there.
+struct spacing_need {
+    value creepage;           // IEC 60664-1
+    value clearance;          // IEC 60664-1: steady peak, transient and least by pollution degree
+    value lab_creepage;       // IEC 61010-1: the figures of IEC 60664-1 (from memory)
+    value lab_clearance;      // IEC 61010-1, table K.11
+    value equipment_creepage; // IEC 62368-1, table 17: the figures of IEC 60664-1
+    value equipment_clearance;
+    value board;              // IPC-2221: functional spacing of conductors on a board
+    std::string board_column; // "B2" ...; "none" where it is no board; empty: unknown
+};
+spacing_need spacing_needed(const value& working_voltage, const spacing_site& site);
+
+/// Clearance and creepage that a limit set asks; null where the set speaks of no spacing.
+struct set_need {
+    const value* clearance = nullptr;
+    const value* creepage = nullptr;
+};
+set_need need_of(const spacing_need& need, const std::string& limit_set);
+
+/// The greatest transient the mains can bring, by IEC 60664-1 table F.1 or as declared; 0 V from a battery; several where the category is not said.
+value mains_impulse(const input& fed, const library& lib);
+
+/// X, the least width of a groove that counts in a path: by pollution degree, a third of the clearance where that is below 3 mm.
+value least_groove(const spacing_site& site);
+
+/// The creepage that counts: along a groove that is at least X wide, else straight across.
+value creepage_of(const spacing_site& site);
 
 /// The written gap that holds for a pair: its own, else the floor gap of either net; null if none.
 const gap* gap_for(const supply& s, const std::string& a, const std::string& b);

@@ -162,7 +162,11 @@ void read_input(reader& r)
                          {{"voltage", type::quantity, dim::voltage, {}},
                           {"isolated", type::truth, {}, {}},
                           {"current-limit", type::quantity, dim::current, {}},
-                          {"highest-adapter", type::quantity, dim::voltage, {}}},
+                          {"highest-adapter", type::quantity, dim::voltage, {}},
+                          {"feed", type::choice, {}, {"battery", "bench supply", "adapter", "mains"}},
+                          {"mains-voltage", type::quantity, dim::voltage, {}},
+                          {"overvoltage-category", type::choice, {}, {"I", "II", "III", "IV"}},
+                          {"transient", type::quantity, dim::voltage, {}}},
                          {"nets"}, "[input]");
     in.voltage = taken(in.fields, "voltage");
     in.isolated = taken(in.fields, "isolated");
@@ -180,6 +184,17 @@ void read_input(reader& r)
     }
 }
 
+/// A groove lengthens a path: both of its figures or neither, and longer than straight across.
+void check_groove(reader& r, const gap& g)
+{
+    if (g.groove.has_value() != g.groove_creepage.has_value()) {
+        r.complain((g.groove ? g.groove : g.groove_creepage)->at,
+                   "a groove is written with its width 'groove' and the path along it 'groove-creepage'");
+    } else if (g.groove_creepage && g.creepage && g.groove_creepage->number()->whole.high < g.creepage->number()->whole.low) {
+        r.contradict(g.groove_creepage->at, "the path along a groove is longer than straight across it", g.creepage->at);
+    }
+}
+
 void read_gaps(reader& r)
 {
     for (const node* t : tables_at(r, "gap")) {
@@ -191,7 +206,11 @@ void read_gaps(reader& r)
                            {"creepage", type::quantity, dim::length, {}},
                            {"surface", type::choice, {}, surfaces},
                            {"cti", type::quantity, dim::none, {}},
-                           {"insulation", type::choice, {}, {"functional", "basic", "supplementary", "reinforced"}}},
+                           {"insulation", type::choice, {}, {"functional", "basic", "supplementary", "reinforced"}},
+                           {"coating", type::choice, {}, {"none", "solder mask", "lacquer", "qualified"}},
+                           {"layer", type::choice, {}, {"external", "internal"}},
+                           {"groove", type::quantity, dim::length, {}},
+                           {"groove-creepage", type::quantity, dim::length, {}}},
                           {"nets"}, "[[gap]]");
         if (const auto where = taken(f, "at")) {
             g.where = *where->text();
@@ -201,6 +220,11 @@ void read_gaps(reader& r)
         g.surface = taken(f, "surface");
         g.cti = taken(f, "cti");
         g.insulation = taken(f, "insulation");
+        g.coating = taken(f, "coating");
+        g.layer = taken(f, "layer");
+        g.groove = taken(f, "groove");
+        g.groove_creepage = taken(f, "groove-creepage");
+        check_groove(r, g);
         const entry* e = t->find("nets");
         if (e == nullptr) {
             r.complain(t->at, "no 'nets' in this gap");

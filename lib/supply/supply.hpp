@@ -53,6 +53,10 @@ struct gap {
     std::optional<field> surface;
     std::optional<field> cti;
     std::optional<field> insulation;
+    std::optional<field> coating;         // "none" | "solder mask" | "lacquer" | "qualified"
+    std::optional<field> layer;           // "external" | "internal"
+    std::optional<field> groove;          // width of the narrowest groove or slot in the path
+    std::optional<field> groove_creepage; // path along that groove; `creepage` is straight across
     place at;
 };
 

@@ -17,12 +17,13 @@ namespace {
 
 std::string described(double volts, const std::string& rest, const std::string& use)
 {
-    return fmt::format("[supply]\nname = \"T\"\nreturn = \"0V\"\ncomplete = [\"capacitors\", \"sources\", \"access\"]\n[use]\naltitude = \"0 "
-                       "m\"\n{}\n[input]\nnets = [\"VIN\", \"0V\"]\n"
-                       "voltage = \"12 V\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = \"{} "
-                       "V\"\ninternal-capacitance = \"0 F\"\n"
-                       "[resistor]\nR1 = {{ nets = [\"HT\", \"VIN\"], value = \"1G\" }}\n{}\n",
-                       use, volts, rest);
+    return fmt::format(
+        "[supply]\nname = \"T\"\nreturn = \"0V\"\ncomplete = [\"capacitors\", \"sources\", \"access\"]\n[use]\naltitude = \"0 "
+        "m\"\n{}\n[input]\nnets = [\"VIN\", \"0V\"]\n"
+        "voltage = \"12 V\"\nfeed = \"battery\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = \"{} "
+        "V\"\ninternal-capacitance = \"0 F\"\n"
+        "[resistor]\nR1 = {{ nets = [\"HT\", \"VIN\"], value = \"1G\" }}\n{}\n",
+        use, volts, rest);
 }
 
 const stored_facts* capacitor(const audit_result& r, const std::string& ref)
