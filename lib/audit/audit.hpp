@@ -83,7 +83,9 @@ struct discharge_facts {
         quantity to;
         value time; // never and reason where it never comes
         std::string limit_set;
-        bool exempt = false; // by charge
+        std::optional<double> within_s; // what the set asks of this pair; empty: told for reading
+        bool exempt = false;            // by little charge, by a marking, by where it is
+        bool governs = false;           // of what is asked and not exempt, the one that is nearest to being missed or missed by most
     };
     std::vector<limit> limits;
     struct remainder {

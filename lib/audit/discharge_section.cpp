@@ -6,6 +6,7 @@
 #include <algorithm>
 #include <array>
 #include <fmt/format.h>
+#include <map>
 
 namespace onehand {
 
@@ -13,23 +14,35 @@ namespace {
 
 constexpr std::array<double, 5> remainders{1.0, 5.0, 10.0, 60.0, 300.0}; // design section 6, in seconds
 
-/// Voltages that the sets in force name, with the sets that name them.
-std::vector<std::pair<double, std::string>> limits_for(const std::vector<std::string>& sets)
+/// Not judged of this pair by the rule that asks it: exempt.
+bool exempt(const judgement& judged, const std::string& rule, const subject& about)
 {
-    std::string at_60;
-    for (const std::string& name : sets) {
-        if (name == "IEC 60204-1" || name == "IEC 61010-1" || name == "IEC 62368-1") {
-            at_60 += (at_60.empty() ? "" : ", ") + name;
-        }
-    }
-    std::vector<std::pair<double, std::string>> list{{60.0, at_60.empty() ? "practice" : at_60}};
-    if (std::find(sets.begin(), sets.end(), "IEC 62368-1") != sets.end()) {
-        list.emplace_back(120.0, "IEC 62368-1");
-    }
-    return list;
+    return std::none_of(judged.findings.begin(), judged.findings.end(),
+                        [&](const finding& f) { return f.rule == rule && f.about == about && f.judged != verdict::not_applicable; });
 }
 
-discharge_facts case_of(const solved_supply& s, const access_item& a, const off_case& how, const std::vector<std::string>& sets)
+/// Of what is asked and not exempt, the time that takes the greatest share of what is allowed.
+void mark_governing(std::vector<discharge_facts::limit>& limits)
+{
+    discharge_facts::limit* worst = nullptr;
+    double most = 0.0;
+    for (discharge_facts::limit& l : limits) {
+        if (!l.within_s || l.exempt) {
+            continue;
+        }
+        const double share = l.time.never || l.time.numbers.empty() ? unbounded : l.time.numbers.front().whole.high / *l.within_s;
+        if (worst == nullptr || share > most) {
+            worst = &l;
+            most = share;
+        }
+    }
+    if (worst != nullptr) {
+        worst->governs = true;
+    }
+}
+
+discharge_facts case_of(const solved_supply& s, const access_item& a, const off_case& how, const std::vector<asked_time>& asked,
+                        const judgement& judged)
 {
     const decay_network& network = s.after(how);
     const std::string& from = a.where.nets[0];
@@ -39,10 +52,14 @@ discharge_facts case_of(const solved_supply& s, const access_item& a, const off_
     f.input_end = how.input_shorted ? "shorted" : "open";
     f.output_end = how.output_unplugged ? "unplugged" : "fitted";
     f.change = how.broken.empty() ? "none" : how.broken + " open";
-    for (const auto& [volts, names] : limits_for(sets)) {
-        const auto charge = highest(a.charge);
-        f.limits.push_back({{volts, dim::voltage}, network.time_to(from, to, volts), names, charge && *charge <= 45e-6});
+    f.limits.push_back({{low_voltage, dim::voltage}, network.time_to(from, to, low_voltage), "practice", {}, false, false});
+    std::map<double, value> known{{low_voltage, f.limits.front().time}};
+    for (const asked_time& t : asked) {
+        const auto it = known.find(t.volts);
+        const value& time = it != known.end() ? it->second : known.emplace(t.volts, network.time_to(from, to, t.volts)).first->second;
+        f.limits.push_back({{t.volts, dim::voltage}, time, t.limit_set, t.seconds, exempt(judged, t.rule, a.about), false});
     }
+    mark_governing(f.limits);
     for (const double t : remainders) {
         f.left.push_back({t, network.left_after(from, to, t)});
     }
@@ -59,19 +76,6 @@ std::string measured_words(const solved_supply& s, const std::vector<std::string
         }
     }
     return {};
-}
-
-/// The parts whose loss alone would leave the pair's capacitors undischarged, or the first body of each path otherwise.
-std::vector<std::string> paths_to_break(const solved_supply& s)
-{
-    std::vector<std::string> refs;
-    for (const element& e : wire(s.bodies(), s.data(), state::switched_off, s.output().stage_parts)) {
-        if (discharges(e) && std::find(e.forms.begin(), e.forms.end(), element_spec::form::resistance) != e.forms.end() &&
-            std::find(refs.begin(), refs.end(), e.ref) == refs.end()) {
-            refs.push_back(e.ref);
-        }
-    }
-    return refs;
 }
 
 /// The longest time to 60 V of any capacitor pair worth waiting for, every path broken in turn.
@@ -93,7 +97,7 @@ value longest_wait(const solved_supply& s, const access_item& a)
             return worst;
         }
     }
-    for (const std::string& ref : paths_to_break(s)) {
+    for (const std::string& ref : s.paths_to_break()) {
         if (!add({false, false, ref})) {
             return worst;
         }
@@ -116,14 +120,16 @@ bool too_little_to_wait_for(const solved_supply& s, const access_item& a)
 
 } // namespace
 
-std::vector<discharge_facts> discharge_section(const solved_supply& s, const std::vector<std::string>& sets)
+std::vector<discharge_facts> discharge_section(const solved_supply& s, const rule_set& rules, const judgement& judged,
+                                               const std::vector<std::string>& sets)
 {
+    const std::vector<asked_time> asked = times_asked(rules, sets);
     std::vector<discharge_facts> list;
     for (const access_item& a : s.accesses()) {
         const auto stored =
             std::find_if(s.stored().begin(), s.stored().end(), [&](const stored_item& i) { return i.is_pair && i.about.nets == a.where.nets; });
         for (const off_case& how : s.off_cases()) {
-            discharge_facts f = case_of(s, a, how, sets);
+            discharge_facts f = case_of(s, a, how, asked, judged);
             f.only_path = stored != s.stored().end() ? stored->only_part : "";
             f.measured = measured_words(s, a.where.nets);
             list.push_back(std::move(f));

@@ -93,7 +93,7 @@ audit_result gather(const supply& s, const session& opened, const std::vector<st
     r.set_point = set_point_section(solved);
     r.accesses = access_section(solved, r.judged);
     r.stored = stored_section(solved, r.judged);
-    r.discharges = discharge_section(solved, sets);
+    r.discharges = discharge_section(solved, *opened.rules, r.judged, sets);
     r.spacings = spacing_section(solved, sets);
     r.label = label_section(solved);
     const bool time_known = r.label && r.label->wait.known() && !r.label->wait.never && !r.label->wait.numbers.empty();

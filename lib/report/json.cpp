@@ -174,7 +174,11 @@ json of_discharge(const discharge_facts& d)
     json j{{"nets", d.nets},     {"input-end", d.input_end}, {"output-end", d.output_end},
            {"change", d.change}, {"limits", json::array()},  {"left", json::array()}};
     for (const auto& l : d.limits) {
-        j["limits"].push_back({{"to", l.to.si}, {"time", of_value(l.time)}, {"limit-set", l.limit_set}, {"exempt", l.exempt}});
+        json one{{"to", l.to.si}, {"time", of_value(l.time)}, {"limit-set", l.limit_set}, {"exempt", l.exempt}, {"governs", l.governs}};
+        if (l.within_s) {
+            one["within"] = *l.within_s;
+        }
+        j["limits"].push_back(one);
     }
     for (const auto& l : d.left) {
         j["left"].push_back({{"after", l.after_s}, {"voltage", of_value(l.voltage)}});

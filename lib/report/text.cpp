@@ -267,12 +267,21 @@ private:
         title("Stored, at its worst");
         line("  " + padded("what", 18) + padded("voltage", 11) + padded("energy", 11) + padded("charge", 11) + padded("at once", 11) + "class");
         for (const stored_facts& s : r_.stored) {
-            std::string classes;
+            std::string first;
+            std::string others;
             for (const class_told& c : s.classes) {
-                classes += (classes.empty() ? "" : " ") + (c.name.empty() ? std::string("unknown") : c.name);
+                const std::string name = c.name.empty() ? std::string("unknown") : c.name;
+                if (first.empty()) {
+                    first = name; // the charged capacitor's
+                } else {
+                    others += (others.empty() ? "" : "; ") + c.id + ": " + name;
+                }
             }
             line("  " + padded(s.about.name, 18) + padded(greatest(s.voltage), 11) + padded(greatest(s.energy), 11) + padded(greatest(s.charge), 11) +
-                 padded(s.is_pair ? greatest(s.at_once_charge) : "-", 11) + classes);
+                 padded(s.is_pair ? greatest(s.at_once_charge) : "-", 11) + first);
+            if (s.is_pair && !others.empty()) {
+                item("      ", others);
+            }
         }
     }
 
@@ -294,10 +303,32 @@ private:
         }
     }
 
+    /// "60 V in 5 s (IEC 60204-1): takes 4 s" for every time asked of the pair, the governing one first.
+    void asked_times(const discharge_facts& d)
+    {
+        std::vector<std::string> told;
+        for (const bool governing : {true, false}) {
+            for (const auto& l : d.limits) {
+                if (!l.within_s || l.exempt || l.governs != governing) {
+                    continue;
+                }
+                const std::string words = format_quantity(l.to) + " in " + format_quantity({*l.within_s, dim::time}) + " (" + l.limit_set +
+                                          "): takes " + greatest(l.time, 3) + (governing ? ", governs" : "");
+                if (std::find(told.begin(), told.end(), words) == told.end()) {
+                    told.push_back(words);
+                }
+            }
+        }
+        if (!told.empty()) {
+            item("      ", "asked: " + listed(told, "; "));
+        }
+    }
+
     void notes(const discharge_facts& d)
     {
+        asked_times(d);
         if (!d.limits.empty() && d.limits.front().time.never) {
-            item("      ", d.limits.front().time.reason + (d.limits.front().exempt ? "; exempt by charge: 45 \u00b5C or less" : ""));
+            item("      ", d.limits.front().time.reason);
         }
         if (!d.limits.empty() && !d.limits.front().time.missing.empty()) {
             item("      ", figure(d.limits.front().time));

@@ -72,6 +72,15 @@ struct rule_view {
 
     friend bool operator==(const rule_view&, const rule_view&) = default;
 };
+/// What the rules in force ask of a discharge: at most so many volts after so many seconds. Read off rules of the form `time-to(U) <= t`.
+struct asked_time {
+    std::string rule;
+    std::string limit_set;
+    double volts = 0.0;
+    double seconds = 0.0;
+};
+std::vector<asked_time> times_asked(const rule_set& rules, const std::vector<std::string>& limit_sets);
+
 /// What a limit set holds, with its figures (constants of rules and classes, printed cells of tables) by how they are known. A rule or table that
 /// rests on memory in part counts as memory whole.
 struct set_counts {

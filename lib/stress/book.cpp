@@ -115,10 +115,21 @@ value solved_supply::stored_fact(const subject& s, const std::string& name) cons
     if (name == "paths") {
         return choice_of(i->paths);
     }
-    const std::pair<const char*, const value*> figures[] = {
-        {"voltage", &i->voltage},         {"capacitance", &i->capacitance},       {"energy", &i->energy},
-        {"charge", &i->charge},           {"at-once-energy", &i->at_once_energy}, {"at-once-charge", &i->at_once_charge},
-        {"es1-voltage", &i->es1_voltage}, {"es2-voltage", &i->es2_voltage}};
+    if (name == "person" || name == "label" || name == "discharge-procedure" || name == "shorting-lead" || name == "discharge-resistor") {
+        return supply_fact(name);
+    }
+    const std::pair<const char*, const value*> figures[] = {{"voltage", &i->voltage},
+                                                            {"capacitance", &i->capacitance},
+                                                            {"energy", &i->energy},
+                                                            {"charge", &i->charge},
+                                                            {"at-once-energy", &i->at_once_energy},
+                                                            {"at-once-charge", &i->at_once_charge},
+                                                            {"es1-voltage", &i->es1_voltage},
+                                                            {"es2-voltage", &i->es2_voltage},
+                                                            {"pulse-current", &i->pulse_current},
+                                                            {"pulse-time", &i->pulse_time},
+                                                            {"pulse-es2-voltage", &i->pulse_es2_voltage},
+                                                            {"pulse-es2-current", &i->pulse_es2_current}};
     for (const auto& [word, figure] : figures) {
         if (name == word) {
             return *figure;
@@ -150,11 +161,21 @@ value solved_supply::access_fact(const subject& s, state in, const std::string& 
     if (name == "touchable") {
         return truth_of(a->touchable);
     }
-    if (name == "person") {
-        return supply_fact("person");
+    if (name == "person" || name == "label" || name == "wet") {
+        return supply_fact(name);
     }
     if (name == "discharge-path") {
         return truth_of(a->discharge_path);
+    }
+    const std::pair<const char*, const value*> figures[] = {
+        {"capacitance", &a->capacitance}, {"es1-voltage", &a->es1_voltage}, {"es2-voltage", &a->es2_voltage}};
+    for (const auto& [word, figure] : figures) {
+        if (name == word) {
+            return *figure;
+        }
+    }
+    if (name == "broken-after-2-s") {
+        return worst_left_broken(s.nets[0], s.nets[1], 2.0);
     }
     const std::pair<const char*, double> left[] = {{"after-1-s", 1.0}, {"after-2-s", 2.0}, {"after-5-s", 5.0}, {"after-10-s", 10.0}};
     for (const auto& [word, seconds] : left) {

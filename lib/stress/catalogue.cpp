@@ -84,7 +84,17 @@ void add_energy(std::vector<fact_spec>& list)
     list.push_back(solved("stored", "at-once-charge", dim::charge, "into the body within 10 ms, through what is in series"));
     list.push_back(truth("stored", "is-pair", "an accessible pair, not a single capacitor"));
     list.push_back(truth("stored", "discharge-path", "a soldered resistive path joins the two nets"));
-    list.push_back(choice("stored", "paths", "how many single parts would have to fail before nothing discharges it", {"none", "one", "several"}));
+    list.push_back(choice("stored", "paths", "how many single parts would have to fail before nothing discharges it; qualified: one, and it is",
+                          {"none", "one", "qualified", "several"}));
+    list.push_back(solved("stored", "pulse-current", dim::current, "through 2 kohm in the first instant after switch-off"));
+    list.push_back(solved("stored", "pulse-time", dim::time, "how long 2 kohm across the pair sees more than 60 V"));
+    list.push_back(told("stored", "pulse-es2-voltage", dim::voltage, "IEC 62368-1 table 6, ES2, at the time to 60 V"));
+    list.push_back(told("stored", "pulse-es2-current", dim::current, "IEC 62368-1 table 7, ES2, at the pulse time"));
+    list.push_back(choice("stored", "person", "ordinary if unsaid", {"ordinary", "instructed", "skilled"}));
+    list.push_back(truth("stored", "label", "as written; absent if not"));
+    list.push_back(truth("stored", "discharge-procedure", "a written discharge procedure is at the bench; absent if not written"));
+    list.push_back(truth("stored", "shorting-lead", "a shorting lead is there to be left in place; absent if not written"));
+    list.push_back(truth("stored", "discharge-resistor", "a resistor tool to discharge through first; absent if not written"));
     list.push_back(told("stored", "es1-voltage", dim::voltage, "IEC 62368-1 table 5, ES1 limit at its capacitance"));
     list.push_back(told("stored", "es2-voltage", dim::voltage, "IEC 62368-1 table 5, ES2 limit at its capacitance"));
 
@@ -93,6 +103,13 @@ void add_energy(std::vector<fact_spec>& list)
     list.push_back(solved("access", "charge", dim::charge, "all that can flow from the pair after switch-off"));
     list.push_back(choice("access", "when", "when it can be reached", {"always", "cover off", "plug withdrawn"}));
     list.push_back(choice("access", "person", "ordinary if unsaid", {"ordinary", "instructed", "skilled"}));
+    list.push_back(told("access", "capacitance", dim::capacitance, "all the charge that can flow, at the pair's voltage"));
+    list.push_back(told("access", "es1-voltage", dim::voltage, "IEC 62368-1 table 5, ES1 limit at what flows at once"));
+    list.push_back(told("access", "es2-voltage", dim::voltage, "IEC 62368-1 table 5, ES2 limit at what flows at once"));
+    list.push_back(truth("access", "label", "as written; absent if not"));
+    list.push_back(truth("access", "wet", "used where it is wet, as written"));
+    list.push_back(solved("access", "broken-after-2-s", dim::voltage,
+                          "left two seconds after switch-off with the worst single discharge path open, qualified resistors excepted"));
     list.push_back(truth("stored", "touchable", "a pair that is open always or by plug withdrawn"));
     list.push_back(truth("access", "touchable", "open always, by plug withdrawn, or the chassis"));
     list.push_back(truth("access", "discharge-path", "a soldered resistive path joins the two nets"));
@@ -113,6 +130,10 @@ void add_whole(std::vector<fact_spec>& list)
     list.push_back(truth("supply", "label", "as written; absent if not"));
     list.push_back(truth("supply", "indicator", "as written; absent if not"));
     list.push_back(truth("supply", "interlock", "as written; absent if not"));
+    list.push_back(truth("supply", "discharge-procedure", "a written discharge procedure is at the bench; absent if not written"));
+    list.push_back(truth("supply", "shorting-lead", "absent if not written"));
+    list.push_back(truth("supply", "discharge-resistor", "absent if not written"));
+    list.push_back(truth("supply", "wet", "used where it is wet, as written"));
     list.push_back(choice("supply", "enclosure", "as written; open if not", {"open", "covered", "finger-proof"}));
     for (const char* what : {"capacitors", "sources", "access"}) {
         list.push_back(truth("supply", std::string(what) + "-attested", "the description says that its list is complete"));

@@ -401,6 +401,32 @@ value decay_network::final_voltage(const std::string& a, const std::string& b) c
     return left_after(a, b, std::numeric_limits<double>::infinity());
 }
 
+decay_network::touch decay_network::touched(const std::string& a, const std::string& b, double ohms, double volts) const
+{
+    const int i = inside_->find(a);
+    const int j = inside_->find(b);
+    touch out;
+    if (i < 0 || j < 0) {
+        out.peak = number(exactly({0.0, dim::voltage})); // nothing charged reaches the pair
+        out.above = number(exactly({0.0, dim::time}));
+    } else {
+        circuit::rc_network with_body = inside_->net;
+        with_body.resistances.push_back({i, j, {ohms, ohms}});
+        out.peak = from_figure(circuit::voltage_after(with_body, i, j, 0.0), dim::voltage, fmt::format("first instant across {} ohm", ohms));
+        out.above =
+            from_figure(circuit::last_time_above(with_body, i, j, volts), dim::time, fmt::format("last time above {} V across {} ohm", volts, ohms));
+    }
+    for (const std::string& net : {a, b}) {
+        if (const auto it = inside_->unknown.find(inside_->root(net)); it != inside_->unknown.end()) {
+            value other;
+            other.missing = it->second;
+            inherit(out.peak, other);
+            inherit(out.above, other);
+        }
+    }
+    return out;
+}
+
 decay_network::pulse decay_network::into_body(const std::string& a, const std::string& b, double ohms, double seconds) const
 {
     const int i = inside_->find(a);

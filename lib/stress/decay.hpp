@@ -50,6 +50,13 @@ public:
     /// Into a resistance put from a to b at the instant of switch-off, over the first `seconds`.
     pulse into_body(const std::string& a, const std::string& b, double ohms, double seconds) const;
 
+    struct touch {
+        value peak;  // voltage across the resistance in the first instant
+        value above; // how long it stays above the limit
+    };
+    /// The single pulse that a resistance put from a to b at the instant of switch-off sees.
+    touch touched(const std::string& a, const std::string& b, double ohms, double volts) const;
+
 private:
     struct inside;
     std::unique_ptr<inside> inside_;

@@ -96,6 +96,34 @@ value solved_supply::worst_left(const std::string& a, const std::string& b, doub
     return worst;
 }
 
+/// A resistor that passed the tests of a standard for it is not itself faulted.
+value solved_supply::worst_left_broken(const std::string& a, const std::string& b, double seconds) const
+{
+    value worst = worst_left(a, b, seconds);
+    for (const std::string& ref : paths_to_break()) {
+        const part* p = bodies_.find_part(ref);
+        const field* qualified = p == nullptr ? nullptr : p->find("qualified");
+        if (qualified != nullptr && qualified->truth() != nullptr && *qualified->truth()) {
+            continue;
+        }
+        worst = greater(worst, after({false, false, ref}).left_after(a, b, seconds));
+    }
+    worst.shown.formula = "greatest voltage left, each discharge path open in turn";
+    return worst;
+}
+
+std::vector<std::string> solved_supply::paths_to_break() const
+{
+    std::vector<std::string> refs;
+    for (const element& e : wire(bodies_, lib_, state::switched_off, output_.stage_parts)) {
+        if (discharges(e) && std::find(e.forms.begin(), e.forms.end(), element_spec::form::resistance) != e.forms.end() &&
+            std::find(refs.begin(), refs.end(), e.ref) == refs.end()) {
+            refs.push_back(e.ref);
+        }
+    }
+    return refs;
+}
+
 void solved_supply::list_accesses()
 {
     std::vector<access> all = written_.accesses;

@@ -24,6 +24,8 @@ struct stored_item {
     std::string paths; // "none" | "one" | "several"
     std::string only_part;
     value es1_voltage, es2_voltage;
+    value pulse_current, pulse_time;            // through the body in the first instant, and how long it stays above the steady limit
+    value pulse_es2_voltage, pulse_es2_current; // what IEC 62368-1 tables 6 and 7 allow for that long
 };
 
 struct access_item {
@@ -33,6 +35,8 @@ struct access_item {
     std::map<state, value> voltage; // magnitude
     std::map<state, value> touch_current;
     value charge;
+    value capacitance;              // that charge at the pair's voltage
+    value es1_voltage, es2_voltage; // IEC 62368-1 table 5, of the stored pair
     bool discharge_path = false;
 };
 
@@ -86,6 +90,8 @@ public:
     /// The cases that stand for switch-off as built: input open and shorted, output fitted and, where there is a plug, unplugged.
     const std::vector<off_case>& off_cases() const { return off_cases_; }
     const decay_network& after(const off_case& how) const;
+    /// Bodies that discharge something after switch-off: each is a path that may be open.
+    std::vector<std::string> paths_to_break() const;
 
 private:
     friend class fact_book;
@@ -96,6 +102,7 @@ private:
     void list_subjects();
     value worst_time(const std::string& a, const std::string& b, double volts) const;
     value worst_left(const std::string& a, const std::string& b, double seconds) const;
+    value worst_left_broken(const std::string& a, const std::string& b, double seconds) const;
     value part_fact(const subject& s, state in, const std::string& name) const;
     value gap_fact(const subject& s, const std::string& name) const;
     value pair_fact(const subject& s, const std::string& name) const;

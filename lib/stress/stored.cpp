@@ -95,6 +95,42 @@ value at_least_nothing(const value& v, const dimension& d)
     return out;
 }
 
+/// IEC 62368-1 tables 6 and 7 at a duration: between rows the stricter one; a time that is never over is the last row's.
+value pulse_limit(const library& lib, const char* id, const value& duration)
+{
+    value v;
+    inherit(v, duration);
+    const table* t = lib.find_table(id);
+    if (t == nullptr || (duration.numbers.empty() && !duration.never)) {
+        return v;
+    }
+    const double seconds = duration.never ? t->axis.back() : duration.numbers.front().whole.high;
+    const table_answer a = look_up(*t, "ES2", exactly({seconds, dim::time}));
+    if (a.figure) {
+        v.numbers.push_back(*a.figure);
+        v.shown.inputs.push_back({t->title, a.rows, t->at});
+    } else {
+        v.missing.push_back(t->title + ": " + a.reason);
+    }
+    v.shown.formula = "ES2 limit of a single pulse of that length";
+    return v;
+}
+
+/// What a body sees in the first instant, for how long, and what the pulse tables allow for that long.
+void add_pulse(stored_item& item, const decay_network& network, const library& lib)
+{
+    const decay_network::touch t = network.touched(item.about.nets[0], item.about.nets[1], standard_body, low_voltage);
+    item.pulse_current = t.peak;
+    for (spread& s : item.pulse_current.numbers) {
+        s = scaled(s, 1.0 / standard_body, dim::conductance);
+        s.dim = dim::current;
+    }
+    item.pulse_current.shown.formula = "first instant, into 2 kohm";
+    item.pulse_time = t.above;
+    item.pulse_es2_voltage = pulse_limit(lib, "iec-62368-1-pulse-voltage", network.time_to(item.about.nets[0], item.about.nets[1], low_voltage));
+    item.pulse_es2_current = pulse_limit(lib, "iec-62368-1-pulse-current", t.above);
+}
+
 /// Capacitance that would hold the same charge at the pair's voltage, so that one table serves any network.
 value equivalent_capacitance(const value& charge, const value& voltage)
 {
@@ -157,8 +193,18 @@ void solved_supply::list_stored()
         item.capacitance = equivalent_capacitance(item.at_once_charge, item.voltage);
         item.es1_voltage = class_voltage(lib_, item.capacitance, "ES1");
         item.es2_voltage = class_voltage(lib_, item.capacitance, "ES2");
+        add_pulse(item, after(off_cases_.front()), lib_);
         paths_of_pair(item, caps);
+        if (item.paths == "one") {
+            const part* only = bodies_.find_part(item.only_part);
+            const field* passed = only == nullptr ? nullptr : only->find("qualified");
+            item.paths = passed != nullptr && passed->truth() != nullptr && *passed->truth() ? "qualified" : item.paths;
+        }
         a.charge = item.charge;
+        a.capacitance = equivalent_capacitance(item.charge, item.voltage);
+        a.capacitance.shown.formula = "all the charge that can flow / voltage";
+        a.es1_voltage = item.es1_voltage;
+        a.es2_voltage = item.es2_voltage;
         stored_.push_back(std::move(item));
     }
 }

@@ -91,7 +91,14 @@ value solved_supply::supply_fact(const std::string& name) const
     if (name == "input-isolated") {
         return written_value(bodies_.fed.isolated, value::type::truth, "input.isolated");
     }
-    if (name == "label" || name == "indicator" || name == "interlock") {
+    if (name == "wet") {
+        const value where = written_value(bodies_.used.location, value::type::choice, "use.location");
+        value v = where.choice.empty() ? missing_value(value::type::truth, where.missing) : truth_of(where.choice == "wet");
+        v.shown = where.shown;
+        return v;
+    }
+    if (name == "label" || name == "indicator" || name == "interlock" || name == "discharge-procedure" || name == "shorting-lead" ||
+        name == "discharge-resistor") {
         return protection_of(bodies_, name);
     }
     if (name == "enclosure") {

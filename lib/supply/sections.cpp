@@ -120,7 +120,8 @@ void read_use(reader& r)
                        {"inside-rise", type::quantity, dim::temperature, {}, true},
                        {"altitude", type::quantity, dim::length, {}, false},
                        {"pollution-degree", type::quantity, dim::none, {}, true, 1.0, 4.0},
-                       {"derating", type::choice, {}, {"none", "usual", "severe"}}},
+                       {"derating", type::choice, {}, {"none", "usual", "severe"}},
+                       {"location", type::choice, {}, {"dry", "wet"}}},
                       {"limit-sets"}, "[use]");
     u.setting = taken(f, "setting");
     u.person = taken(f, "person");
@@ -129,6 +130,7 @@ void read_use(reader& r)
     u.altitude = taken(f, "altitude");
     u.pollution_degree = taken(f, "pollution-degree");
     u.derating = taken(f, "derating");
+    u.location = taken(f, "location");
     if (u.inside_rise && u.inside_rise->written.find('C') != std::string::npos) {
         r.complain(u.inside_rise->at, "'inside-rise' is a difference: write it in K, like \"15 K\"");
         u.inside_rise.reset();
@@ -313,7 +315,10 @@ void read_protection(reader& r)
                                       {{"enclosure", type::choice, {}, {"open", "covered", "finger-proof"}},
                                        {"interlock", type::truth, {}, {}},
                                        {"indicator", type::truth, {}, {}},
-                                       {"label", type::truth, {}, {}}},
+                                       {"label", type::truth, {}, {}},
+                                       {"discharge-procedure", type::truth, {}, {}},
+                                       {"shorting-lead", type::truth, {}, {}},
+                                       {"discharge-resistor", type::truth, {}, {}}},
                                       {}, "[protection]");
 }
 

@@ -75,7 +75,7 @@ struct decay {
 };
 
 struct use {
-    std::optional<field> setting, person, ambient, inside_rise, altitude, pollution_degree, derating;
+    std::optional<field> setting, person, ambient, inside_rise, altitude, pollution_degree, derating, location;
     std::vector<std::string> limit_sets;
     place limit_sets_at;
     place at;
