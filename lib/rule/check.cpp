@@ -259,9 +259,11 @@ private:
         if (column == t->columns.end()) {
             return fail(e, "table '" + t->id + "' has no column '" + e.column + "'");
         }
-        if (t->by_choice || e.parts[1].dim != t->axis_dim) {
-            return fail(e.parts[1],
-                        "the axis of '" + t->id + "' is " + (t->by_choice ? "a choice" : name_of(t->axis_dim)) + ", not " + word_of(e.parts[1]));
+        const bool fits = t->by_choice ? e.parts[1].type == type::choice && e.parts[1].word == t->axis_name
+                                       : e.parts[1].type == type::number && e.parts[1].dim == t->axis_dim;
+        if (!fits) {
+            return fail(e.parts[1], "the axis of '" + t->id + "' is " + (t->by_choice ? "the choice '" + t->axis_name + "'" : name_of(t->axis_dim)) +
+                                        ", not " + word_of(e.parts[1]));
         }
         e.dim = column->dim;
         return true;

@@ -128,6 +128,18 @@ value of_table(const expression& e, const surroundings& s)
     const value x = evaluate(e.parts[1], s);
     value v;
     gather_names(v, x);
+    if (t->by_choice) {
+        // An unknown choice may be any printed row.
+        for (const std::string& choice : x.choice.empty() ? t->choices : std::vector<std::string>{x.choice}) {
+            const std::vector<spread> printed = look_up_choice(*t, e.column, choice);
+            v.numbers.insert(v.numbers.end(), printed.begin(), printed.end());
+        }
+        if (v.numbers.empty()) {
+            v.missing.push_back("a row for '" + x.choice + "' in: " + t->title);
+        }
+        v.shown.inputs.push_back({t->title, x.choice.empty() ? "any row" : "row " + x.choice, t->at});
+        return v;
+    }
     for (const spread& at : x.numbers) {
         const table_answer a = look_up(*t, e.column, at);
         if (a.figure) {

@@ -228,7 +228,7 @@ finding judge_one(const rule& r, const library& lib, const subject& about, state
     }
     if (f.judged == verdict::pass || f.judged == verdict::marginal || !r.require) {
         if (!advised(r, s, derating)) {
-            f.advice = r.shown.remedy;
+            f.advice = r.require ? r.shown.remedy : filled(r.shown.message, about, f, s) + "; " + r.shown.remedy;
         }
     }
     f.message = filled(r.shown.message, about, f, s);

@@ -62,6 +62,10 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
     if (name == "ambient") {
         return inside_temperature(bodies_.used);
     }
+    if (name == "derating") {
+        const std::optional<field>& said = bodies_.used.derating;
+        return choice_of(said && said->text() != nullptr ? *said->text() : "none");
+    }
     if (name == "polarised") {
         return truth_of(p->polarised);
     }

@@ -31,6 +31,7 @@ void add_parts(std::vector<fact_spec>& list)
     list.push_back(solved("part", "voltage", dim::voltage, "across the part, first terminal positive; of one body where it is a string"));
     list.push_back(solved("part", "current", dim::current, "through the part, into its first terminal"));
     list.push_back(solved("part", "power", dim::power, "dissipated in the part, spread jointly", {"value"}));
+    list.push_back(choice("part", "derating", "how far good practice goes; none if unsaid", {"none", "usual", "severe"}));
     list.push_back(told("part", "ambient", dim::temperature, "air around the part: ambient and the rise inside"));
     list.push_back(solved("mosfet", "peak-voltage", dim::voltage, "drain to source at its highest, the spike included"));
     list.push_back(solved("diode", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
