@@ -44,6 +44,7 @@ std::vector<std::string> cautions_for(const audit_result& r)
         "Capacitors hold their charge after switch-off and can come back after a brief short: discharge through a resistor, prove dead, leave "
         "shorted.",
         "Prove the meter on a known source, test, prove it again; meter, leads and probes rated for the highest voltage told here.",
+        "A dark lamp, LED or tube is no proof of dead: a gas lamp goes out near 60 V, an LED with what feeds it. Measure.",
         "This report knows only what the description says: no burr, flux, loose strand, wrong part or hidden second source is in it.",
         "Local codes and the judgement of a licensed or authorised person come before anything printed here."};
     if (!r.label || !r.label->wait.known() || r.label->wait.never || r.label->wait.numbers.empty()) {
@@ -85,8 +86,7 @@ audit_result gather(const supply& s, const session& opened, const std::vector<st
     r.rules_stamp = opened.stamp;
     r.limit_sets = sets;
     r.left_out = left_out(s, opened.lib, sets);
-    const std::string derating = s.used.derating && s.used.derating->text() != nullptr ? *s.used.derating->text() : "none";
-    r.judged = judge(*opened.rules, opened.lib, solved.subjects(), solved, {sets, derating});
+    r.judged = judge(*opened.rules, opened.lib, solved.subjects(), solved, {sets});
     r.loosened = r.judged.loosened;
     r.nets = net_section(solved);
     r.parts = part_section(solved);

@@ -258,7 +258,7 @@ private:
                 title("Advice: beyond good practice, within limits; told, never judged");
             }
             any = true;
-            item("  ", f.about.name + ": " + f.advice + " [" + source_words(o_.lib, f.from) + "]");
+            item("  ", f.about.name + ": " + f.advice + " - " + source_words(o_.lib, f.from));
         }
     }
 

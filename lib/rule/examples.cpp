@@ -114,7 +114,7 @@ std::vector<example_result> run_examples_of(const rule& r, const library& lib)
     for (const rule_example& e : r.examples) {
         const given_facts facts(lib, r.shown.subject, e.given);
         const subject about{r.shown.subject, "X", {"HT", "0V"}, {}};
-        const finding f = judge_one(r, lib, about, first_of(r.states), facts, facts.classes(), e.advice ? e.derating : "none");
+        const finding f = judge_one(r, lib, about, first_of(r.states), facts, facts.classes());
         std::string expected = e.verdict + without(e.missing, nullptr);
         std::string got = word_for(f.judged) + without(e.missing, &f.missing);
         if (e.advice) {

@@ -126,9 +126,9 @@ std::string settling(const rule& r, const finding& f)
     return inputs.empty() ? "measure it as built and write what was measured" : "measure and write as measured: " + listed(inputs);
 }
 
-bool advised(const rule& r, const surroundings& s, const std::string& derating)
+bool advised(const rule& r, const surroundings& s)
 {
-    if (!r.advise || derating == "none" || derating.empty()) {
+    if (!r.advise) {
         return true;
     }
     const truth_outcome t = judge_truth(*r.advise, s);
@@ -169,7 +169,7 @@ std::map<std::string, std::string> classes_of(const rule_set& set, const library
 }
 
 finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts,
-                  const std::map<std::string, std::string>& classes, const std::string& derating)
+                  const std::map<std::string, std::string>& classes)
 {
     const surroundings s{&lib, &facts, &about, in, &classes};
     finding f;
@@ -227,7 +227,7 @@ finding judge_one(const rule& r, const library& lib, const subject& about, state
         f.judged = verdict::not_applicable; // advice is told, never judged
     }
     if (f.judged == verdict::pass || f.judged == verdict::marginal || !r.require) {
-        if (!advised(r, s, derating)) {
+        if (applies.missing.empty() && !advised(r, s)) {
             f.advice = r.require ? r.shown.remedy : filled(r.shown.message, about, f, s) + "; " + r.shown.remedy;
         }
     }
@@ -355,7 +355,7 @@ judgement judge(const rule_set& rules, const library& lib, const std::vector<sub
                 continue;
             }
             for (const state in : r.states) {
-                finding f = judge_one(r, lib, s, in, facts, classes_for(s, in), options.derating);
+                finding f = judge_one(r, lib, s, in, facts, classes_for(s, in));
                 f.change = changed;
                 some.push_back(std::move(f));
             }

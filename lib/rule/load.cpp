@@ -273,8 +273,6 @@ private:
                     x.verdict = k.value.text;
                 } else if (k.key == "advice") {
                     x.advice = k.value.truth;
-                } else if (k.key == "derating") {
-                    x.derating = k.value.text;
                 } else if (k.key == "missing") {
                     for (const node& m : k.value.items) {
                         x.missing.push_back(m.text);

@@ -27,7 +27,7 @@ void fields(A& a, rule_view& v)
 template<class A>
 void fields(A& a, rule_example& e)
 {
-    a(e.name, e.verdict, e.advice, e.derating, e.missing, e.given, e.at);
+    a(e.name, e.verdict, e.advice, e.missing, e.given, e.at);
 }
 
 template<class A>

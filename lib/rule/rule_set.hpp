@@ -8,8 +8,7 @@ namespace onehand {
 struct rule_example {
     std::string name;
     std::string verdict;
-    std::optional<bool> advice;     // whether good practice is told as not met; unsaid: not looked at
-    std::string derating = "usual"; // for the advice
+    std::optional<bool> advice; // whether good practice is told as not met; unsaid: not looked at
     std::vector<std::string> missing;
     given_figures given;
     place at;
@@ -50,7 +49,7 @@ std::map<std::string, std::string> classes_of(const rule_set& set, const library
 
 /// One rule on one subject in one state.
 finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts,
-                  const std::map<std::string, std::string>& classes, const std::string& derating);
+                  const std::map<std::string, std::string>& classes);
 
 /// One rule's or class's own examples.
 std::vector<example_result> run_examples_of(const rule& r, const library& lib);

@@ -18,7 +18,6 @@ rules_result compile_rules(const library& lib);
 
 struct judging_options {
     std::vector<std::string> limit_sets; // sets in force; "practice" rules always are
-    std::string derating;                // none | usual | severe
 };
 
 /// The class of each subject that a class is about, e.g. {"iec-62368-1-steady", "ES3"}; empty name: not shown.

@@ -1,4 +1,5 @@
 // The look-ups of solved_supply: a fact by subject, state and name.
+#include "stress/part_facts.hpp"
 #include "stress/solved.hpp"
 
 #include <algorithm>
@@ -72,6 +73,20 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
     if (name == "electrolytic") {
         const value d = field_value(*p, *kind, lib_, "dielectric");
         return d.choice.empty() ? missing_value(value::type::truth, {p->ref + ".dielectric"}) : truth_of(is_electrolytic(d.choice));
+    }
+    if (name == "insulation-voltage") {
+        return insulation_voltage(*this, *p);
+    }
+    if (name == "source-current") {
+        return source_current(*this);
+    }
+    if (name == "indicates") {
+        return truth_of(p->role == "indicator");
+    }
+    if (p->kind == "capacitor") {
+        if (const auto v = capacitor_fact(*this, *p, name)) {
+            return *v;
+        }
     }
     const auto found = at(in).bodies.find(s.name);
     if (name == "peak-voltage") {
@@ -178,6 +193,9 @@ value solved_supply::access_fact(const subject& s, state in, const std::string& 
             return *figure;
         }
     }
+    if (name == "one-short-touch-current") {
+        return one_short_touch_current(*this, *a);
+    }
     if (name == "broken-after-2-s") {
         return worst_left_broken(s.nets[0], s.nets[1], 2.0);
     }
@@ -202,14 +220,26 @@ value solved_supply::converter_fact(const std::string& name) const
         return choice_of(output_.topology);
     }
     if (name == "isolates") {
+        const field* written = bodies_.stage ? bodies_.stage->find("isolates") : nullptr;
+        if (written != nullptr && written->truth() != nullptr) {
+            return truth_of(*written->truth());
+        }
         return output_.topology == "boost" || output_.topology == "boost-multiplier"
                    ? truth_of(false)
-                   : missing_value(value::type::truth, {"whether the converter isolates"});
+                   : missing_value(value::type::truth, {(bodies_.stage ? bodies_.stage->name : std::string("converter")) + ".isolates"});
     }
     return missing_value(value::type::number, {"converter." + name});
 }
 
 value solved_supply::look_up(const subject& s, state in, const std::string& name) const
+{
+    // One judgement asks for a fact several times, and some are solved anew each time.
+    const auto key = std::tuple(s.kind, s.name, s.at.line, s.at.column, in, name);
+    const auto known = memo_.find(key);
+    return known != memo_.end() ? known->second : memo_.emplace(key, fact(s, in, name)).first->second;
+}
+
+value solved_supply::fact(const subject& s, state in, const std::string& name) const
 {
     if (s.kind == "gap") {
         return gap_fact(s, name);

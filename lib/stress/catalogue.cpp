@@ -33,6 +33,19 @@ void add_parts(std::vector<fact_spec>& list)
     list.push_back(solved("part", "power", dim::power, "dissipated in the part, spread jointly", {"value"}));
     list.push_back(choice("part", "derating", "how far good practice goes; none if unsaid", {"none", "usual", "severe"}));
     list.push_back(told("part", "ambient", dim::temperature, "air around the part: ambient and the rise inside"));
+    list.push_back(solved("part", "insulation-voltage", dim::voltage, "greatest between any two of its nets, or of one against the return"));
+    list.push_back(told("fuse", "source-current", dim::current, "what the input can deliver for long, as written"));
+    list.push_back(truth("lamp", "indicates", "its role is to indicate"));
+    list.push_back(truth("led", "indicates", "its role is to indicate"));
+    list.push_back(truth("capacitor", "class-2", "its dielectric is a class 2 ceramic"));
+    list.push_back(truth("capacitor", "suppression-class", "it is sold by a class X or Y"));
+    list.push_back(truth("capacitor", "bridges-touchable", "it joins something that can be touched, not bonded to the return, to another net"));
+    list.push_back(told("capacitor", "leakage-drop", dim::voltage, "greatest leakage times the resistance that feeds it"));
+    list.push_back(truth("capacitor", "in-series", "it shares a voltage with other capacitors in a string"));
+    list.push_back(truth("capacitor", "balanced", "a resistor stands straight across it"));
+    list.push_back(told("capacitor", "balancing-resistance", dim::resistance, "of the resistors straight across it, at its greatest"));
+    list.push_back(told("capacitor", "balancing-limit", dim::resistance, "(n U_rated - U)/((n - 1) I_leak)"));
+    list.push_back(solved("capacitor", "initial-share", dim::voltage, "its share of the string's voltage by capacitance alone"));
     list.push_back(solved("mosfet", "peak-voltage", dim::voltage, "drain to source at its highest, the spike included"));
     list.push_back(solved("diode", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
     list.push_back(solved("zener", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
@@ -107,6 +120,7 @@ void add_energy(std::vector<fact_spec>& list)
     list.push_back(told("access", "capacitance", dim::capacitance, "all the charge that can flow, at the pair's voltage"));
     list.push_back(told("access", "es1-voltage", dim::voltage, "IEC 62368-1 table 5, ES1 limit at what flows at once"));
     list.push_back(told("access", "es2-voltage", dim::voltage, "IEC 62368-1 table 5, ES2 limit at what flows at once"));
+    list.push_back(solved("access", "one-short-touch-current", dim::current, "through 2 kohm with the worst single resistor body shorted"));
     list.push_back(truth("access", "label", "as written; absent if not"));
     list.push_back(truth("access", "wet", "used where it is wet, as written"));
     list.push_back(solved("access", "broken-after-2-s", dim::voltage,
@@ -141,6 +155,12 @@ void add_whole(std::vector<fact_spec>& list)
     }
     list.push_back(choice("supply", "person", "ordinary if unsaid", {"ordinary", "instructed", "skilled"}));
     list.push_back(choice("supply", "setting", "as written", {"teaching lab", "repair bench", "display equipment"}));
+    list.push_back(told("supply", "meter-error", dim::none, "how much too low a 10 Mohm meter reads on the net that is fed most weakly"));
+    list.push_back(choice("supply", "meter-error-net", "that net", {}));
+    list.push_back(
+        solved("supply", "input-after-fault", dim::voltage, "input pins after a shorted rectifier, charge shared with the input's capacitors"));
+    list.push_back(truth("supply", "shares-input", "the topology joins output and input"));
+    list.push_back(truth("supply", "input-touchable", "the input's positive net is open always or by plug withdrawn"));
     list.push_back(truth("supply", "chassis-declared", "a chassis net is written"));
     list.push_back(truth("supply", "return-bonded", "the return is bonded to the chassis"));
     list.push_back(

@@ -5,6 +5,8 @@
 #include "stress/spacing.hpp"
 #include "supply/change.hpp"
 
+#include <tuple>
+
 namespace onehand {
 
 /// The body of IEC 62368-1 (and IEC 61140) for touch current and charge, in ohm.
@@ -103,6 +105,7 @@ private:
     value worst_time(const std::string& a, const std::string& b, double volts) const;
     value worst_left(const std::string& a, const std::string& b, double seconds) const;
     value worst_left_broken(const std::string& a, const std::string& b, double seconds) const;
+    value fact(const subject& s, state in, const std::string& name) const;
     value part_fact(const subject& s, state in, const std::string& name) const;
     value gap_fact(const subject& s, const std::string& name) const;
     value pair_fact(const subject& s, const std::string& name) const;
@@ -124,6 +127,7 @@ private:
     std::vector<off_case> off_cases_;
     mutable std::vector<std::pair<off_case, std::unique_ptr<decay_network>>> decays_;
     std::vector<subject> subjects_;
+    mutable std::map<std::tuple<std::string, std::string, std::uint32_t, std::uint32_t, state, std::string>, value> memo_;
 };
 
 } // namespace onehand

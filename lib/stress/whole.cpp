@@ -1,4 +1,5 @@
 // Facts of the supply as a whole: fuse in the input path, what is attested, what protects as written.
+#include "stress/part_facts.hpp"
 #include "stress/paths.hpp"
 #include "stress/solved.hpp"
 
@@ -78,6 +79,7 @@ value highest(const std::vector<const value*>& all, dimension d)
         }
     }
     out.numbers.push_back({d, {certain, in_use}, {certain, whole}, std::nullopt});
+    out.shown.formula = "greatest of all";
     return out;
 }
 
@@ -118,6 +120,23 @@ value solved_supply::supply_fact(const std::string& name) const
     }
     if (name == "return-bonded") {
         return written_value(bodies_.return_bonded, value::type::truth, "supply.return-bonded");
+    }
+    if (name == "meter-error" || name == "meter-error-net") {
+        const meter_error worst = worst_meter_error(*this);
+        value v = name == "meter-error" ? number(exactly({worst.share, dim::none})) : choice_of(worst.net.empty() ? "none" : worst.net);
+        v.shown.formula = "R/(R + 10 Mohm), R what feeds " + worst.net + " at its greatest, all stiff nets joined";
+        return v;
+    }
+    if (name == "input-after-fault") {
+        return input_after_fault(*this);
+    }
+    if (name == "shares-input") {
+        const value isolates = converter_fact("isolates");
+        return isolates.truth ? truth_of(!*isolates.truth) : missing_value(value::type::truth, isolates.missing);
+    }
+    if (name == "input-touchable") {
+        const std::set<std::string> open = touchable_nets(written_);
+        return truth_of(!bodies_.fed.nets.empty() && open.contains(bodies_.fed.nets[0]));
     }
     std::vector<const value*> figures;
     if (name == "highest-voltage") {

@@ -26,7 +26,8 @@ public:
                                {"power-limit", type::quantity, dim::power, {}},
                                {"internal-capacitance", type::quantity, dim::capacitance, {}},
                                {"internal-bleeder", type::quantity, dim::resistance, {}},
-                               {"spike", type::quantity, dim::voltage, {}}},
+                               {"spike", type::quantity, dim::voltage, {}},
+                               {"isolates", type::truth, {}, {}}},
                               {"input", "inductor", "switch", "rectifier", "outputs", "drive", "feedback", "ladder"}, "[converter." + c_.name + "]");
         if (const auto topology = c_.fields.find("topology"); topology != c_.fields.end()) {
             c_.topology = *topology->second.text();

@@ -11,7 +11,7 @@ namespace onehand {
 namespace {
 
 const std::set<std::string> reserved{"supply", "use", "input", "converter", "gap", "access", "decay", "protection"};
-const std::vector<std::string> roles{"bleeder", "balance", "limiting", "divider", "damping", "filter", "sense"};
+const std::vector<std::string> roles{"bleeder", "balance", "limiting", "divider", "damping", "filter", "sense", "indicator"};
 constexpr std::size_t most_parts = 500;
 
 std::string starred(const std::string& name, std::size_t number)

@@ -1,0 +1,178 @@
+// Capacitors in series: how the string divides a voltage at once by capacitance and in the end by leakage and balancing resistors.
+#include "stress/part_facts.hpp"
+#include "stress/spread_math.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+namespace onehand {
+
+namespace {
+
+bool touches(const part& p, const std::string& net)
+{
+    return std::any_of(p.terminals.begin(), p.terminals.end(), [&](const terminal& t) { return t.net == net; });
+}
+
+std::string other_end(const part& p, const std::string& net)
+{
+    return p.terminals[0].net == net ? p.terminals[1].net : p.terminals[0].net;
+}
+
+/// The capacitor beyond a junction of two capacitors that nothing but resistors across either of them touches.
+const part* next_in_string(const solved_supply& s, const part& c, const std::string& junction)
+{
+    const supply& built = s.bodies();
+    const bool held = junction == built.return_net || std::find(built.fed.nets.begin(), built.fed.nets.end(), junction) != built.fed.nets.end() ||
+                      junction == s.output().positive || junction == s.output().negative;
+    if (held) {
+        return nullptr;
+    }
+    const part* next = nullptr;
+    for (const part& p : built.parts) {
+        if (p.ref == c.ref || !touches(p, junction)) {
+            continue;
+        }
+        if (p.kind == "capacitor") {
+            if (next != nullptr) {
+                return nullptr; // more than two meet here
+            }
+            next = &p;
+        } else if (p.kind != "resistor") {
+            return nullptr;
+        }
+    }
+    if (next == nullptr) {
+        return nullptr;
+    }
+    const std::set<std::string> ends{other_end(c, junction), other_end(*next, junction)};
+    const bool only_across = std::all_of(built.parts.begin(), built.parts.end(), [&](const part& p) {
+        return p.kind != "resistor" || !touches(p, junction) || ends.contains(other_end(p, junction));
+    });
+    return only_across ? next : nullptr;
+}
+
+/// Least conductance of the resistors straight across a capacitor; 0 without any.
+double balancing_conductance(const solved_supply& s, const part& c)
+{
+    double siemens = 0.0;
+    for (const part& p : s.bodies().parts) {
+        const field* ohms = p.kind == "resistor" ? p.find("value") : nullptr;
+        if (ohms != nullptr && ohms->number() != nullptr && touches(p, c.terminals[0].net) && touches(p, c.terminals[1].net) &&
+            ohms->number()->whole.high > 0.0) {
+            siemens += 1.0 / ohms->number()->whole.high;
+        }
+    }
+    return siemens;
+}
+
+value string_voltage(const solved_supply& s, const capacitor_string& chain)
+{
+    value v;
+    for (const dc_solution& d : s.states()) {
+        const value one = magnitude(d.voltage(chain.from, chain.to));
+        v = v.numbers.empty() && v.missing.empty() ? one : greater(v, one);
+    }
+    return v;
+}
+
+/// R <= (n U_rated - U_bus)/((n - 1) dI): one leaks nothing, all others the most. The published form without (n - 1) is right for two only.
+value balancing_limit(const solved_supply& s, const part& p, const capacitor_string& chain)
+{
+    const value bus = string_voltage(s, chain);
+    value v;
+    inherit(v, bus);
+    double leakage = 0.0;
+    double rated = unbounded;
+    for (const part* member : chain.members) {
+        const value one = leakage_of(s, *member);
+        inherit(v, one);
+        leakage = std::max(leakage, highest(one).value_or(0.0));
+        const field* volts = member->find("rated-voltage");
+        if (volts == nullptr || volts->number() == nullptr) {
+            v.missing.push_back(member->ref + ".rated-voltage");
+        } else {
+            rated = std::min(rated, volts->number()->whole.low);
+        }
+    }
+    const auto most = highest(bus);
+    if (!v.missing.empty() || !most || !std::isfinite(rated) || leakage <= 0.0) {
+        if (v.missing.empty()) {
+            v.missing.push_back(p.ref + ".leakage");
+        }
+        return v;
+    }
+    const auto n = static_cast<double>(chain.members.size());
+    const double ohms = std::max(0.0, (n * rated - *most) / ((n - 1.0) * leakage));
+    v.numbers.push_back(exactly({ohms, dim::resistance}));
+    v.shown.formula = "(n U_rated - U)/((n - 1) I_leak), n = " + std::to_string(chain.members.size());
+    return v;
+}
+
+/// By capacitance alone, the smallest at its least against the others at their greatest.
+value initial_share(const solved_supply& s, const part& p, const capacitor_string& chain)
+{
+    value v = string_voltage(s, chain);
+    double own = 0.0;
+    double all = 0.0;
+    for (const part* member : chain.members) {
+        const field* farads = member->find("value");
+        if (farads == nullptr || farads->number() == nullptr || farads->number()->whole.low <= 0.0) {
+            v.missing.push_back(member->ref + ".value");
+            continue;
+        }
+        const bool self = member->ref == p.ref;
+        const double inverse = 1.0 / (self ? farads->number()->whole.low : farads->number()->whole.high);
+        own = self ? inverse : own;
+        all += inverse;
+    }
+    for (spread& x : v.numbers) {
+        x = scaled(x, all > 0.0 ? own / all : 1.0);
+    }
+    v.shown.formula = "U (1/C)/sum(1/C), this one at its least, the others at their greatest";
+    return v;
+}
+
+} // namespace
+
+std::optional<capacitor_string> string_of(const solved_supply& s, const part& p)
+{
+    capacitor_string chain;
+    chain.members = {&p};
+    chain.from = p.terminals[0].net;
+    chain.to = p.terminals[1].net;
+    for (const bool forward : {true, false}) {
+        std::string& end = forward ? chain.to : chain.from;
+        const part* last = &p;
+        while (const part* next = next_in_string(s, *last, end)) {
+            if (std::find(chain.members.begin(), chain.members.end(), next) != chain.members.end()) {
+                return std::nullopt; // a ring divides nothing
+            }
+            chain.members.insert(forward ? chain.members.end() : chain.members.begin(), next);
+            end = other_end(*next, end);
+            last = next;
+        }
+    }
+    return chain.members.size() > 1 ? std::optional(chain) : std::nullopt;
+}
+
+value string_fact(const solved_supply& s, const part& p, const std::string& name)
+{
+    const auto chain = string_of(s, p);
+    if (name == "in-series") {
+        return truth_of(chain.has_value());
+    }
+    const double siemens = balancing_conductance(s, p);
+    if (name == "balanced") {
+        return truth_of(siemens > 0.0);
+    }
+    if (name == "balancing-resistance") {
+        return siemens > 0.0 ? number(exactly({1.0 / siemens, dim::resistance})) : missing_value(value::type::number, {"a resistor across " + p.ref});
+    }
+    if (!chain) {
+        return missing_value(value::type::number, {p.ref + " in a string"});
+    }
+    return name == "balancing-limit" ? balancing_limit(s, p, *chain) : initial_share(s, p, *chain);
+}
+
+} // namespace onehand

@@ -1,0 +1,120 @@
+// What one failed part does to a person: a limiting resistor shorted, the output joined to the input pins.
+#include "stress/part_facts.hpp"
+#include "stress/paths.hpp"
+#include "stress/spread_math.hpp"
+
+#include <algorithm>
+
+namespace onehand {
+
+namespace {
+
+/// Nets between the accessible ones and the stiff ones: what stands in series with a body.
+std::set<std::string> fed_through(const solved_supply& s, const std::vector<std::string>& nets)
+{
+    const std::set<std::string> stiff = stiff_nets(s);
+    const std::vector<element> wired = wire(s.bodies(), s.data(), state::no_load, s.output().stage_parts);
+    std::set<std::string> near;
+    for (const std::string& net : nets) {
+        if (!stiff.contains(net)) {
+            near.merge(reach(wired, net, [&](const element& e) { return may_conduct(e) && !stiff.contains(e.from) && !stiff.contains(e.to); }));
+        }
+    }
+    return near;
+}
+
+} // namespace
+
+value one_short_touch_current(const solved_supply& s, const access_item& a)
+{
+    value worst = a.touch_current.at(state::no_load);
+    worst = greater(worst, a.touch_current.at(state::running));
+    std::string by;
+    const std::set<std::string> near = fed_through(s, a.where.nets);
+    for (const part& p : s.bodies().parts) {
+        // Behind a stiff net a resistor changes nothing here.
+        if (p.kind != "resistor" || (!near.contains(p.terminals[0].net) && !near.contains(p.terminals[1].net))) {
+            continue;
+        }
+        change shorted;
+        shorted.sort = change::what::part_fault;
+        shorted.ref = p.ref;
+        shorted.mode = "short";
+        const change_result faulted = apply(s.bodies(), s.data(), shorted);
+        if (!faulted.refused.empty()) {
+            continue;
+        }
+        const value i =
+            magnitude(current_through(faulted.edited, s.data(), s.output(), state::no_load, a.where.nets[0], a.where.nets[1], standard_body));
+        const auto before = highest(worst);
+        worst = greater(worst, i);
+        by = before && highest(worst) && *highest(worst) > *before * (1.0 + 1e-12) ? p.ref : by;
+    }
+    worst.shown.formula = "into 2 kohm with each resistor body shorted in turn" + (by.empty() ? "" : "; worst " + by);
+    return worst;
+}
+
+namespace {
+
+/// Capacitors on the input's own side: between its nets, fuses, coils, wires and fitted plugs counted through.
+double least_input_capacitance(const solved_supply& s, const std::set<std::string>& side)
+{
+    double farads = 0.0;
+    for (const charged_capacitor& c : s.capacitors()) {
+        const bool there = side.contains(c.positive) && c.negative == s.written().return_net;
+        if (there && !c.capacitance.numbers.empty()) {
+            farads += c.capacitance.numbers.front().whole.low;
+        }
+    }
+    return farads;
+}
+
+} // namespace
+
+value input_after_fault(const solved_supply& s)
+{
+    const supply& built = s.bodies();
+    if (built.fed.nets.size() != 2 || s.output().positive.empty()) {
+        return missing_value(value::type::number, {"input and output nets"});
+    }
+    const std::vector<element> wired = wire(built, s.data(), state::running, {});
+    const std::set<std::string> side = reach(wired, built.fed.nets[0], [&](const element& e) {
+        return surely_conducts(e) &&
+               std::none_of(e.forms.begin(), e.forms.end(), [](element_spec::form f) { return f == element_spec::form::resistance; }) &&
+               e.from != built.return_net && e.to != built.return_net;
+    });
+    value v;
+    const value input = magnitude(s.at(state::running).voltage(built.fed.nets[0], built.fed.nets[1]));
+    const auto source = highest(input);
+    inherit(v, input);
+    double charge = 0.0;
+    double farads = 0.0;
+    double highest_held = 0.0;
+    for (const charged_capacitor& c : s.capacitors()) {
+        if (side.contains(c.positive) && c.negative == built.return_net) {
+            continue;
+        }
+        const auto volts = highest(magnitude(c.voltage));
+        const auto size = highest(c.capacitance);
+        if (!volts || !size) {
+            v.missing.push_back(c.ref + " (capacitance)");
+            continue;
+        }
+        if (*volts > source.value_or(0.0)) {
+            charge += *size * *volts;
+            farads += *size;
+            highest_held = std::max(highest_held, *volts);
+        }
+    }
+    const double own = least_input_capacitance(s, side);
+    if (source && v.missing.empty()) {
+        const double settled = farads + own > 0.0 ? (charge + own * *source) / (farads + own) : *source;
+        v.numbers.push_back(between(dim::voltage, std::min(*source, settled), std::max(*source, settled)));
+    }
+    v.shown.formula =
+        "(C_out U_out + C_in U_in)/(C_out + C_in): rectifier shorted, source disconnected; through a coil it rings to twice that less U_in "
+        "at the most";
+    return v;
+}
+
+} // namespace onehand

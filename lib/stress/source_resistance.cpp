@@ -1,0 +1,116 @@
+// How weakly a net is fed, and what a meter's own resistance makes of it.
+#include "circuit/network.hpp"
+#include "stress/part_facts.hpp"
+#include "stress/paths.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+namespace onehand {
+
+namespace {
+
+using form = element_spec::form;
+
+constexpr double usual_meter = 10e6; // ohm, common practice
+constexpr double least_ohms = 1e-3;  // of what is closed
+
+bool without_resistance(const element& e)
+{
+    const auto joins = [](form f) { return f == form::closed || f == form::inductance; };
+    return surely_conducts(e) && std::all_of(e.forms.begin(), e.forms.end(), joins);
+}
+
+std::vector<element> wired(const solved_supply& s)
+{
+    return wire(s.bodies(), s.data(), state::no_load, s.output().stage_parts);
+}
+
+/// One element as resistances; a wiper is fed most weakly from the middle of its track.
+template<class Add>
+void add_resistances(const element& e, Add add)
+{
+    const auto v = e.values.find(e.wiper.empty() ? form::resistance : form::track);
+    if (without_resistance(e)) {
+        add(e.from, e.to, range{least_ohms, least_ohms});
+    } else if (v != e.values.end() && !v->second.numbers.empty()) {
+        const range& ohms = v->second.numbers.front().whole;
+        if (e.wiper.empty()) {
+            add(e.from, e.to, ohms);
+        } else {
+            add(e.from, e.wiper, range{0.5 * ohms.low, 0.5 * ohms.high});
+            add(e.wiper, e.to, range{0.5 * ohms.low, 0.5 * ohms.high});
+        }
+    }
+}
+
+} // namespace
+
+std::set<std::string> stiff_nets(const solved_supply& s)
+{
+    std::set<std::string> held{s.written().return_net, s.output().positive, s.output().negative};
+    held.insert(s.written().fed.nets.begin(), s.written().fed.nets.end());
+    if (s.written().stage) {
+        held.insert(s.written().stage->inputs.begin(), s.written().stage->inputs.end());
+    }
+    held.erase("");
+    const std::vector<element> all = wired(s);
+    std::set<std::string> nets;
+    for (const std::string& net : held) {
+        nets.merge(reach(all, net, without_resistance));
+    }
+    return nets;
+}
+
+std::optional<double> source_resistance(const solved_supply& s, const std::string& net)
+{
+    const std::set<std::string> stiff = stiff_nets(s);
+    if (stiff.contains(net)) {
+        return 0.0;
+    }
+    const std::vector<element> all = wired(s);
+    // Only what joins the net without passing a stiff one.
+    const std::set<std::string> near = reach(all, net, [&](const element& e) { return !stiff.contains(e.from) && !stiff.contains(e.to); });
+    circuit::network n;
+    std::map<std::string, int> node;
+    const auto at = [&](const std::string& name) {
+        return stiff.contains(name) ? 0 : node.emplace(name, static_cast<int>(node.size()) + 1).first->second;
+    };
+    const int self = at(net);
+    bool tied = false;
+    for (const element& e : all) {
+        if (!near.contains(e.from) && !near.contains(e.to)) {
+            continue;
+        }
+        add_resistances(e, [&](const std::string& from, const std::string& to, const range& ohms) {
+            if (at(from) != at(to)) {
+                n.branches.push_back({at(from), at(to), {{circuit::form::resistance, {ohms.low, ohms.high}}}});
+                tied |= at(from) == self || at(to) == self;
+            }
+        });
+    }
+    if (!tied) {
+        return std::nullopt;
+    }
+    const int feed = static_cast<int>(node.size()) + 1;
+    n.branches.push_back({feed, self, {{circuit::form::resistance, {least_ohms, least_ohms}}}});
+    n.sources.push_back({feed, 0, {1.0, 1.0}});
+    n.nodes = feed + 1;
+    const double least = circuit::solve(n).current.back().low;
+    return least > 0.0 ? std::optional(1.0 / least) : std::nullopt;
+}
+
+meter_error worst_meter_error(const solved_supply& s)
+{
+    meter_error worst;
+    for (const std::string& net : s.written().nets) {
+        const auto ohms = source_resistance(s, net);
+        const double share = ohms ? *ohms / (*ohms + usual_meter) : 0.0;
+        if (share > worst.share * (1.0 + 1e-12)) {
+            worst = {net, share};
+        }
+    }
+    return worst;
+}
+
+} // namespace onehand
