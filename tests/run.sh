@@ -9,33 +9,35 @@ packages=(g++ cmake ninja-build ccache libboost-dev libtomlplusplus-dev libfmt-d
 install_missing "${packages[@]}"
 
 jobs=$(nproc)
+stage() { echo "== $1 ($SECONDS s)"; }
 
-echo "== format"
+stage "format"
 git ls-files '*.cpp' '*.hpp' | xargs clang-format --dry-run --Werror
 
-echo "== build, warnings are errors"
+stage "build, warnings are errors"
 cmake -S . -B build/check -G Ninja -DONEHAND_DEV=ON -DCMAKE_BUILD_TYPE=Release >/dev/null
 cmake --build build/check -j "$jobs"
 
-echo "== tests"
+stage "tests"
 ctest --test-dir build/check --output-on-failure --no-tests=error -j "$jobs"
 
-echo "== tests under address and undefined-behaviour sanitizers"
-cmake -S . -B build/sanitize -G Ninja -DONEHAND_DEV=ON -DONEHAND_SANITIZE=ON -DCMAKE_BUILD_TYPE=RelWithDebInfo -DCMAKE_CXX_FLAGS_RELWITHDEBINFO="-O1 -g" >/dev/null
+stage "mutants of the rules that an example notices"
+build/check/tests/test_rule -tc="every mutant*" | grep "mutants noticed"
+
+stage "tests under address and undefined-behaviour sanitizers, coverage counted"
+cmake -S . -B build/sanitize -G Ninja -DONEHAND_DEV=ON -DONEHAND_SANITIZE=ON -DONEHAND_COVERAGE=ON -DCMAKE_BUILD_TYPE=RelWithDebInfo -DCMAKE_CXX_FLAGS_RELWITHDEBINFO="-O1" >/dev/null
 cmake --build build/sanitize -j "$jobs"
+find build/sanitize -name '*.gcda' -delete
 ctest --test-dir build/sanitize --output-on-failure --no-tests=error -j "$jobs" -LE long
 
-echo "== lint"
+stage "coverage of lib/"
+gcovr --root . --filter 'lib/' --exclude-throw-branches --exclude-unreachable-branches build/sanitize --print-summary 2>/dev/null | tail -4 || echo "coverage could not be read"
+
+stage "lint"
 git ls-files 'lib/*.cpp' 'cli/*.cpp' | grep -v 'cli/options.cpp' | xargs -P "$jobs" -n 6 clang-tidy -p build/check --quiet --extra-arg=-Wno-unknown-warning-option 2>/dev/null
 
-echo "== coverage of lib/"
-cmake -S . -B build/coverage -G Ninja -DONEHAND_DEV=ON -DONEHAND_COVERAGE=ON -DCMAKE_BUILD_TYPE=Debug >/dev/null
-cmake --build build/coverage -j "$jobs"
-ctest --test-dir build/coverage --output-on-failure --no-tests=error -j "$jobs" -LE long >/dev/null
-gcovr --root . --filter 'lib/' --exclude-throw-branches --exclude-unreachable-branches build/coverage --print-summary 2>/dev/null | tail -4 || echo "coverage could not be read"
-
-echo "== short fuzz: quantities, expressions, documents"
+stage "short fuzz: quantities, expressions, documents"
 bash tests/fuzz/run.sh 8
 
-echo "== tests, closing line"
+stage "tests, closing line"
 ctest --test-dir build/check --no-tests=error -j "$jobs" | tail -3

@@ -190,6 +190,34 @@ TEST_CASE("derating of semiconductors just either side")
     }
 }
 
+TEST_CASE("derating of transistors and zeners just either side")
+{
+    const std::tuple<const char*, double, const char*> bjt[] = {{"derate-bjt-voltage-nasa", 0.75, "severe"},
+                                                                {"derate-bjt-voltage-ecss", 0.75, "severe"},
+                                                                {"derate-bjt-voltage-338b-severe", 0.7, "severe"},
+                                                                {"derate-bjt-voltage-338b-usual", 0.8, "usual"}};
+    for (const auto& [rule, share, profile] : bjt) {
+        for (const double side : {0.999, 1.001}) {
+            const std::string part = fmt::format(
+                "R1 = {{ nets = [\"HT\", \"C\"], value = \"100k\" }}\nR2 = {{ nets = [\"VIN\", \"B\"], value = \"100k\" }}\n[bjt]\nQ1 = {{ "
+                "collector = \"C\", base = \"B\", emitter = \"0V\", rated-voltage = \"{:.12g} V\" }}",
+                200.0 / (share * side));
+            CAPTURE(rule);
+            CHECK(advised(rail(200, part, fmt::format("derating = \"{}\"", profile)), rule, "Q1") == (side > 1.0));
+        }
+    }
+    for (const auto& [rule, share] : {std::pair("derate-zener-power-nasa", 0.5), std::pair("derate-zener-power-ecss", 0.65)}) {
+        for (const double side : {0.999, 1.001}) { // 1 mA at 100 V
+            const std::string part =
+                fmt::format("R1 = {{ nets = [\"HT\", \"Z\"], value = \"100k\" }}\n[zener]\nZ1 = {{ anode = \"0V\", cathode = \"Z\", zener-voltage = "
+                            "\"100 V\", rated-power = \"{:.12g} W\" }}",
+                            0.1 / (share * side));
+            CAPTURE(rule);
+            CHECK(advised(rail(200, part, "derating = \"severe\""), rule, "Z1") == (side > 1.0));
+        }
+    }
+}
+
 TEST_CASE("derating of cartridge fuses row by row: share of the rated current")
 {
     const table& t = printed("derating-fuse-nasa");

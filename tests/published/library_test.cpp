@@ -6,6 +6,9 @@
 #include <doctest/doctest.h>
 
 #include <algorithm>
+#include <filesystem>
+#include <fstream>
+#include <iterator>
 
 using namespace onehand;
 
@@ -172,4 +175,31 @@ TEST_CASE("names of choices come with all their printed values")
     CHECK(look_up_choice(t, "limiting-voltage", "0603").size() == 2);
     CHECK(look_up_choice(t, "limiting-voltage", "1206 high-voltage").front().whole.low == 500.0);
     CHECK(look_up_choice(t, "power", "1206 high-voltage").empty());
+}
+
+TEST_CASE("every source is cited and every table is read or says in its first line what it is for")
+{
+    const library lib = load_library(embedded_rules()).lib;
+    std::string all;
+    for (const rule_text& f : embedded_rules()) {
+        all += f.text;
+    }
+    for (const source& s : lib.sources) {
+        CAPTURE(s.key);
+        CHECK(all.find("cite = \"" + s.key + "\"") != std::string::npos);
+    }
+    std::string read = all;
+    for (const auto& e : std::filesystem::recursive_directory_iterator(std::string(ONEHAND_SOURCE) + "/lib")) {
+        if (e.path().extension() == ".cpp") {
+            std::ifstream in(e.path());
+            read += std::string(std::istreambuf_iterator<char>(in), {});
+        }
+    }
+    for (const rule_text& f : embedded_rules()) {
+        if (f.name.starts_with("tables/")) {
+            const std::string id = f.name.substr(7, f.name.size() - 12);
+            CAPTURE(id);
+            CHECK((read.find('"' + id + '"') != std::string::npos || f.text.starts_with("# ")));
+        }
+    }
 }

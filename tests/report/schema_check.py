@@ -10,12 +10,13 @@ program, source = sys.argv[1:3]
 schema = json.load(open(f"{source}/lib/report/result.schema.json"))
 validator = jsonschema.Draft7Validator(schema)
 validator.check_schema(schema)
-files = ["tide-clock-as-built", "tide-clock-corrected", "geiger-bench", "minimal", "negative-rail"]
+files = ["tide-clock-as-built", "tide-clock-corrected", "geiger-bench", "minimal", "negative-rail", "repair-rail"]
 bad = 0
 runs = [["audit", "--format", "json", f"samples/{f}.toml"] for f in files]
 runs.append(["audit", "--format", "json", "samples/minimal.toml", "no-such-file.toml"])
 runs.append(["discharge", "--format", "json", "samples/geiger-bench.toml"])
 runs.append(["spacing", "--format", "json", "samples/tide-clock-as-built.toml"])
+runs.append(["spacing", "--format", "json", "samples/repair-rail.toml"])
 for run in runs:
     out = subprocess.run([program, *run], cwd=source, capture_output=True, text=True).stdout
     for error in validator.iter_errors(json.loads(out)):
