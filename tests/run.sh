@@ -19,7 +19,7 @@ cmake -S . -B build/check -G Ninja -DONEHAND_DEV=ON -DCMAKE_BUILD_TYPE=Release >
 cmake --build build/check -j "$jobs"
 
 stage "tests"
-ctest --test-dir build/check --output-on-failure --no-tests=error -j "$jobs"
+ctest --test-dir build/check --output-on-failure --no-tests=error -j "$jobs" | tee build/check/ctest.log
 
 stage "mutants of the rules that an example notices"
 build/check/tests/test_rule -tc="every mutant*" | grep "mutants noticed"
@@ -39,5 +39,5 @@ git ls-files 'lib/*.cpp' 'cli/*.cpp' | grep -v 'cli/options.cpp' | xargs -P "$jo
 stage "short fuzz: quantities, expressions, documents"
 bash tests/fuzz/run.sh 8
 
-stage "tests, closing line"
-ctest --test-dir build/check --no-tests=error -j "$jobs" | tail -3
+stage "all done; the tests said"
+tail -3 build/check/ctest.log

@@ -231,10 +231,18 @@ spacing_need spacing_needed(const value& working_voltage, const spacing_site& si
         need.lab_creepage = at_least_clearance(need.lab_creepage, need.lab_clearance);
         need.equipment_creepage = at_least_clearance(need.equipment_creepage, need.equipment_clearance);
     }
-    for (value* v : {&need.creepage, &need.clearance, &need.lab_creepage, &need.lab_clearance, &need.equipment_creepage, &need.equipment_clearance,
-                     &need.board}) {
-        if (!v->numbers.empty() || !v->missing.empty()) {
-            inherit(*v, working_voltage);
+    // A set that asks nothing stays empty; one that asks carries what is not known of the voltage.
+    std::vector<value*> asked{&need.creepage, &need.clearance};
+    if (against_transients(site)) {
+        asked.insert(asked.end(), {&need.lab_creepage, &need.lab_clearance, &need.equipment_creepage, &need.equipment_clearance});
+    }
+    if (need.board_column != "none") {
+        asked.push_back(&need.board);
+    }
+    for (value* v : asked) {
+        inherit(*v, working_voltage);
+        if (v->numbers.empty() && v->missing.empty()) {
+            v->missing.emplace_back("the working voltage");
         }
     }
     return need;

@@ -38,6 +38,8 @@ std::vector<std::string> cuts(const std::string& text)
         "nets", "ends", "wiper", "anode", "cathode", "cathodes", "positive", "negative", "drain", "gate", "source", "return", "outputs", "topology",
         "inductor", "switch", "rectifier", "core", "screen", "poles", "name", "at", "when", "from", "to", "time", "length", "chassis", "input",
         "feedback", "drive", "series", "return-bonded",
+        // What makes it a part of a sort that is judged by more rules: without the word it is another part.
+        "safety-class", "role",
         // Unsaid it is functional inside one circuit by the description's own rule: another question is then judged, with the same figures.
         "insulation"};
     std::vector<std::string> out;

@@ -405,6 +405,22 @@ TEST_CASE("side by side: basic insulation up to 2000 m, computed from the tables
     }
 }
 
+TEST_CASE("a voltage that is not known asks for an unknown spacing and never for none")
+{
+    const audit_outcome o = run(
+        "[supply]\nreturn = \"0V\"\n[use]\naltitude = \"0 m\"\npollution-degree = 2\n[input]\nnets = [\"VIN\", \"0V\"]\nvoltage = \"12 V\"\nfeed = "
+        "\"battery\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\n[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"9 "
+        "mm\"\ncreepage = "
+        "\"9 mm\"\nsurface = \"FR-4\"\ninsulation = \"basic\"\n");
+    REQUIRE(o.result);
+    for (const char* rule :
+         {"clearance", "creepage", "clearance-laboratory", "creepage-laboratory", "clearance-equipment", "creepage-equipment", "board-spacing"}) {
+        CAPTURE(rule);
+        CHECK(found(*o.result, rule, "HT to 0V")->judged == verdict::not_shown);
+    }
+    CHECK(pair_in(*o.result).kept == verdict::not_shown);
+}
+
 TEST_CASE("what governs is the set that asks most, and a set left out asks nothing")
 {
     const audit_result r = at(
