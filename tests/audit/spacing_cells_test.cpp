@@ -355,6 +355,23 @@ TEST_CASE("altitudes on both sides of 3050 m: the wider column, and without a vo
     CHECK(need.board.numbers.empty());
 }
 
+TEST_CASE("an output told by its least figure alone is not read as that figure")
+{
+    const auto judged = [](const char* output) {
+        const audit_outcome o = run(
+            fmt::format("[supply]\nreturn = \"0V\"\n[use]\naltitude = \"0 m\"\npollution-degree = 2\n[input]\nnets = [\"VIN\", \"0V\"]\nvoltage = "
+                        "\"12 V\"\nfeed = \"battery\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = "
+                        "\"{}\"\n[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"9 mm\"\ncreepage = \"9 mm\"\nsurface = \"FR-4\"\ninsulation = "
+                        "\"basic\"\n",
+                        output));
+        REQUIRE(o.result);
+        CHECK(pair_in(*o.result).kept == found(*o.result, "creepage", "HT to 0V")->judged);
+        return found(*o.result, "creepage", "HT to 0V")->judged;
+    };
+    CHECK(judged("max 300 V") == verdict::pass);
+    CHECK(judged("min 300 V") == verdict::not_shown);
+}
+
 TEST_CASE("the view is no milder than the rule: a board gap of basic insulation that IPC-2221 refuses is not kept")
 {
     const std::string gap = "surface = \"board copper\"\ninsulation = \"basic\"";
