@@ -61,7 +61,7 @@ verdict verdict_of(const spacing_facts& f)
     }
     verdict worst = verdict::pass;
     for (const auto& r : f.asked) {
-        const bool functional = f.insulation == "functional" || r.limit_set == "IPC-2221";
+        const bool functional = f.insulation == "functional";
         worst = std::min(worst, kept(f.measured.front().clearance, r.clearance, functional));
         worst = std::min(worst, kept(f.measured.front().creepage, r.creepage, functional));
     }

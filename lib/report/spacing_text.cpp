@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <fmt/format.h>
+#include <utility>
 
 namespace onehand {
 
@@ -49,8 +50,11 @@ public:
     {
         line(r_.name);
         line("Spacings, highest voltage first; the strictest figure governs, marked *");
-        for (const spacing_facts& s : r_.spacings) {
-            pair(s);
+        for (const block& b : blocks()) {
+            line();
+            const std::string head = b.pairs + "  " + b.judged;
+            item("", o_.colour ? "\x1b[1m" + head + "\x1b[0m" : head);
+            out_ += b.rows;
         }
         if (r_.spacings.empty()) {
             line();
@@ -74,11 +78,38 @@ private:
         line("  " + padded(name, 16) + padded(clearance, 14) + creepage);
     }
 
-    void pair(const spacing_facts& s)
+    /// Pairs of which the same is told stand in one block, where the first of them is due.
+    struct block {
+        std::string pairs;
+        std::string judged;
+        std::string rows;
+    };
+
+    std::vector<block> blocks()
     {
-        line();
-        const std::string head = s.about.name + "  " + greatest(s.working_voltage) + ", " + s.insulation + ": " + kept_words(s.kept);
-        item("", o_.colour ? "\x1b[1m" + head + "\x1b[0m" : head);
+        std::vector<block> list;
+        for (const spacing_facts& s : r_.spacings) {
+            block b{s.about.name, greatest(s.working_voltage) + ", " + s.insulation + ": " + kept_words(s.kept), rows_of(s)};
+            const auto alike = [&](const block& other) { return other.judged == b.judged && other.rows == b.rows; };
+            const auto it = std::find_if(list.begin(), list.end(), alike);
+            if (it == list.end()) {
+                list.push_back(std::move(b));
+            } else {
+                it->pairs += ", " + b.pairs;
+            }
+        }
+        return list;
+    }
+
+    std::string rows_of(const spacing_facts& s)
+    {
+        std::string before = std::exchange(out_, {});
+        rows(s);
+        return std::exchange(out_, std::move(before));
+    }
+
+    void rows(const spacing_facts& s)
+    {
         row("", "clearance", "creepage");
         for (const auto& asked : s.asked) {
             const auto marked = [&](const value& v, const std::string& governs) {

@@ -45,12 +45,17 @@ private:
 
     void hold(const std::string& plus, const std::string& minus, const value& v, const std::string& name)
     {
-        if (v.numbers.empty()) {
+        // What is told on one side only holds nothing: a corner without an end would be left out of the search.
+        const bool bounded = std::all_of(v.numbers.begin(), v.numbers.end(), [](const spread& s) { return s.whole.bounded(); });
+        if (v.numbers.empty() || !bounded) {
             out_.unheld.push_back(name);
             for (const std::string& net : {plus, minus}) {
                 if (net != s_.return_net) {
                     auto& list = out_.missing[node(net)];
                     list.insert(list.end(), v.missing.begin(), v.missing.end());
+                    if (v.missing.empty()) {
+                        list.push_back(name + ": its highest or lowest figure");
+                    }
                 }
             }
             return;

@@ -5,6 +5,7 @@
 #include "stress/spread_math.hpp"
 
 #include <algorithm>
+#include <cmath>
 #include <fmt/format.h>
 
 namespace onehand {
@@ -94,6 +95,9 @@ void find_output(const supply& s, const library& lib, rail& r)
         r.output = number(*declared->number());
         r.output.shown = {"as declared", {input_of(c.name + ".output-voltage", *declared)}, false, 0.0};
         r.basis = "as declared";
+        if (!std::isfinite(declared->number()->whole.high)) {
+            r.output.missing.push_back(c.name + ".output-voltage: its highest figure");
+        }
     } else if (by_feedback(c)) {
         find_set_point(s, lib, r);
     } else {

@@ -22,20 +22,22 @@ bool against_transients(const spacing_site& site)
     return site.insulation != "functional";
 }
 
-/// Preferred series of rated impulse voltages: reinforced insulation takes the next step (IEC 60664-1, 5.1.6).
-double next_impulse(double volts, const library& lib)
+/// What reinforced insulation stands (IEC 60664-1, 5.1.6): the next of the preferred impulse voltages, 160 % of what is none of them. An impulse may
+/// also be rated at the preferred one above it and take the step after that; the lesser of both ways, never below the step of the preferred one
+/// below.
+double reinforced_impulse(double volts)
 {
-    std::vector<double> series;
-    if (const table* t = lib.find_table("iec-60664-1-impulse")) {
-        for (const auto& row : t->cells) {
-            for (const auto& cell : row) {
-                series.insert(series.end(), cell.begin(), cell.end());
-            }
-        }
+    // 10 and 15 kV stand in the 2020 table of mains only: after 8 kV comes 12 kV.
+    constexpr double series[] = {330, 500, 800, 1500, 2500, 4000, 6000, 8000, 12000};
+    const auto above = std::lower_bound(std::begin(series), std::end(series), volts * (1.0 - 1e-9));
+    const auto step_of = [&](const double* at) { return at == std::end(series) || at + 1 == std::end(series) ? unbounded : at[1]; };
+    const bool preferred = above != std::end(series) && *above <= volts * (1.0 + 1e-9);
+    if (preferred && step_of(above) < unbounded) {
+        return step_of(above);
     }
-    std::sort(series.begin(), series.end());
-    const auto at = std::upper_bound(series.begin(), series.end(), volts * (1.0 + 1e-9));
-    return at == series.end() ? 1.6 * volts : *at; // beyond the series 160 %
+    const double asked = std::min(1.6 * volts, step_of(above));
+    const bool below = above != std::begin(series) && above != std::end(series);
+    return below ? std::max(asked, step_of(above - 1)) : asked;
 }
 
 /// The greater of both; where one is unknown, anything from the other up.
@@ -103,7 +105,7 @@ value transient_clearance(const value& impulse, const spacing_site& site)
             v.numbers.push_back(exactly({0.0, dim::length}));
             continue;
         }
-        const double asked = reinforced(site) ? next_impulse(peak, *site.lib) : peak;
+        const double asked = reinforced(site) ? reinforced_impulse(peak) : peak;
         const std::string column = "A-PD" + std::to_string(*degree.degree);
         if (const auto figure = read_column(v, site, "iec-60664-1-clearance-transient", column, exactly({asked, dim::voltage}))) {
             v.numbers.push_back(*figure);
@@ -140,34 +142,42 @@ std::optional<std::string> column_for(double impulse)
     return std::nullopt;
 }
 
+/// Table K.11 is for what the mains reaches. Without mains it is silent, and the air must still stand the steady voltage: IEC 60664-1 table F.8.
+value laboratory_clearance(const spread& volts, const value& impulse, const spacing_site& site)
+{
+    value v;
+    v.shown.formula = "table K.11 at the working voltage, or table F.8 of IEC 60664-1 without mains, least by pollution degree, altitude; twice for "
+                      "reinforced";
+    for (const spread& s : impulse.numbers) {
+        const bool mains = s.whole.high > 0.0;
+        const auto column = column_for(s.whole.high);
+        if (mains && !column) {
+            v.missing.emplace_back("a column of table K.11 for so high an impulse");
+            continue;
+        }
+        const auto figure = mains ? read_column(v, site, "iec-61010-1-secondary", *column, volts)
+                                  : read_column(v, site, "iec-60664-1-clearance-steady", "case-A", volts);
+        if (figure) {
+            v.numbers.push_back(*figure);
+        }
+    }
+    return v;
+}
+
 void add_laboratory(spacing_need& need, const value& working, const value& impulse, const spacing_site& site)
 {
     if (!against_transients(site)) {
         return;
     }
     const double times_basic = reinforced(site) ? 2.0 : 1.0;
-    need.lab_clearance = each_voltage(working, [&](const spread& volts) {
-        value v;
-        for (const spread& s : impulse.numbers) {
-            if (s.whole.high <= 0.0) {
-                v.numbers.push_back(exactly({0.0, dim::length})); // no mains, no table: the least by degree remains
-                continue;
-            }
-            const auto column = column_for(s.whole.high);
-            if (!column) {
-                v.missing.emplace_back("a column of table K.11 for so high an impulse");
-            } else if (const auto figure = read_column(v, site, "iec-61010-1-secondary", *column, volts)) {
-                v.numbers.push_back(scaled(*figure, times_basic));
-            }
-        }
-        v.shown.formula = "table K.11 at the working voltage, least by pollution degree, altitude; twice for reinforced";
-        return v;
-    });
+    need.lab_clearance = each_voltage(working, [&](const spread& volts) { return laboratory_clearance(volts, impulse, site); });
     inherit(need.lab_clearance, impulse);
     finish_clearance(need.lab_clearance, site, "iec-60664-1-clearance-least", "least");
     need.lab_creepage = each_voltage(working, [&](const spread& volts) { return basic_creepage(volts, site, true); });
-    for (spread& s : need.lab_creepage.numbers) {
-        s = scaled(s, times_basic);
+    for (value* v : {&need.lab_clearance, &need.lab_creepage}) { // the least by degree is doubled with the rest
+        for (spread& s : v->numbers) {
+            s = scaled(s, times_basic);
+        }
     }
 }
 

@@ -90,7 +90,7 @@ void add_board(spacing_need& need, const value& working, const spacing_site& sit
             }
         }
     }
-    if (columns.size() > 1) {
+    if (columns.size() > 1 && !need.board.numbers.empty()) {
         // Both sides of 3050 m are in use: the wider column holds for all of it.
         spread all = need.board.numbers.front();
         for (const spread& s : need.board.numbers) {

@@ -3,6 +3,8 @@
 // text), IEC 62368-1 tables 10 and 14 (memory, anchors in a seminar paper and a test report), IPC-2221 table 6-1 (three copies).
 #include "help.hpp"
 
+#include "stress/spacing.hpp"
+
 #include <doctest/doctest.h>
 
 #include <cmath>
@@ -302,6 +304,99 @@ TEST_CASE("informative table F.9 is advice from 2.5 kV up")
             CAPTURE(text);
             CHECK(found(r, "discharge-free", "HT to 0V")->advice.empty() == (share == 1.0));
             CHECK(found(r, "discharge-free", "HT to 0V")->judged == verdict::not_applicable);
+        }
+    }
+}
+
+// IEC 60664-1 5.1.6: the next preferred impulse voltage (a seminar paper, an application note, a data sheet), 160 % of what is none (memory).
+TEST_CASE("reinforced insulation never takes less than 160 % of a transient that is not preferred")
+{
+    const auto reinforced = [](double volts) { return clearance(10, {.input = transient(volts), .gap = "cti = 600\ninsulation = \"reinforced\""}); };
+    const std::pair<double, double> steps[] = {{330, 500},   {500, 800},   {800, 1500},  {1500, 2500},
+                                               {2500, 4000}, {4000, 6000}, {6000, 8000}, {8000, 12000}};
+    for (const auto& [volts, next] : steps) {
+        CAPTURE(volts);
+        CHECK(same(reinforced(volts), clearance(10, {.input = transient(next)})));
+    }
+    CHECK(same(reinforced(1800), clearance(10, {.input = transient(2880)})));   // the step above 1.8 kV, 2.5 kV, is only 139 %
+    CHECK(same(reinforced(10000), clearance(10, {.input = transient(16000)}))); // stands in the 2020 table of mains, not in the series
+    CHECK(same(reinforced(12000), clearance(10, {.input = transient(19200)}))); // the series ends
+    double before = 0.0;
+    for (double volts = 300; volts < 20000; volts *= 1.013) { // a higher transient never asks less
+        const double now = reinforced(volts);
+        CAPTURE(volts);
+        CHECK(now >= before);
+        before = now;
+    }
+}
+
+// Table K.11 is silent without mains; the steady clearance of IEC 60664-1 stands in, common practice without a source.
+TEST_CASE("IEC 61010-1 without mains: the air must still stand the steady voltage")
+{
+    CHECK(each_row("iec-60664-1-clearance-steady", "case-A", [](double v) { return clearance(v, {}, "IEC 61010-1"); }) == 30);
+    CHECK(same(clearance(3000, {.gap = "cti = 600\ninsulation = \"reinforced\""}, "IEC 61010-1"), 4.8));
+    CHECK(clearance(50100, {}, "IEC 61010-1") < 0.0);
+    const std::string gap = "cti = 600\ninsulation = \"reinforced\"";
+    CHECK(same(clearance(100, {.gap = gap, .use = "pollution-degree = 2"}, "IEC 61010-1"), 0.4)); // the least by degree, doubled
+    CHECK(same(clearance(100, {.input = transient(1500), .gap = gap, .use = "pollution-degree = 3"}, "IEC 61010-1"), 1.6));
+}
+
+TEST_CASE("altitudes on both sides of 3050 m: the wider column, and without a voltage none")
+{
+    const char* both = "3000 m .. 3100 m";
+    CHECK(same(clearance(300, {.gap = "surface = \"board copper\"\ninsulation = \"basic\"", .altitude = both}, "IPC-2221"), 12.5));
+    use used;
+    used.altitude = field{spread{dim::length, {3000, 3100}, {3000, 3100}, std::nullopt}, {}, "3000 m .. 3100 m", {}};
+    gap board;
+    board.surface = field{std::string("board copper"), {}, "board copper", {}};
+    const input fed;
+    const spacing_need need =
+        spacing_needed(missing_value(value::type::number, {"K1.output-voltage"}), {"functional", &board, &used, &fed, &library_of(opened())});
+    CHECK(need.board.numbers.empty());
+}
+
+TEST_CASE("an output told by its least figure alone is not read as that figure")
+{
+    const auto judged = [](const char* output) {
+        const audit_outcome o = run(
+            fmt::format("[supply]\nreturn = \"0V\"\n[use]\naltitude = \"0 m\"\npollution-degree = 2\n[input]\nnets = [\"VIN\", \"0V\"]\nvoltage = "
+                        "\"12 V\"\nfeed = \"battery\"\n[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = "
+                        "\"{}\"\n[[gap]]\nnets = [\"HT\", \"0V\"]\nclearance = \"9 mm\"\ncreepage = \"9 mm\"\nsurface = \"FR-4\"\ninsulation = "
+                        "\"basic\"\n",
+                        output));
+        REQUIRE(o.result);
+        CHECK(pair_in(*o.result).kept == found(*o.result, "creepage", "HT to 0V")->judged);
+        return found(*o.result, "creepage", "HT to 0V")->judged;
+    };
+    CHECK(judged("max 300 V") == verdict::pass);
+    CHECK(judged("min 300 V") == verdict::not_shown);
+}
+
+TEST_CASE("the view is no milder than the rule: a board gap of basic insulation that IPC-2221 refuses is not kept")
+{
+    const std::string gap = "surface = \"board copper\"\ninsulation = \"basic\"";
+    const audit_result r = at(10000, {.gap = gap}); // 2 m written: kept by all
+    CHECK(pair_in(r).kept == verdict::pass);
+    const audit_result high = at(100000, {.gap = gap, .altitude = "3051 m"}); // B3 asks 2.5 m; the other tables end below
+    CHECK(found(high, "board-spacing", "HT to 0V")->judged == verdict::fail);
+    CHECK(pair_in(high).kept == verdict::fail);
+}
+
+TEST_CASE("taking the feed away never improves a finding on a spacing")
+{
+    for (const char* set : {"clearance", "clearance-laboratory", "clearance-equipment", "creepage", "board-spacing"}) {
+        for (const char* insulation : {"functional", "basic", "reinforced"}) {
+            const std::string gap = std::string("surface = \"FR-4\"\ninsulation = \"") + insulation + "\"";
+            const auto judged = [&](const char* input) {
+                return found(at(400, {.input = input, .gap = gap, .use = "pollution-degree = 2"}), set, "HT to 0V")->judged;
+            };
+            CAPTURE(set);
+            CAPTURE(insulation);
+            const verdict battery = judged("feed = \"battery\"");
+            const verdict unsaid = judged("");
+            CHECK(unsaid <= battery); // in order of gravity
+            const bool transients = std::string(insulation) != "functional" && std::string(set) != "board-spacing";
+            CHECK((unsaid == verdict::not_shown) == transients);
         }
     }
 }
