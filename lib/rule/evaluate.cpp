@@ -131,8 +131,16 @@ value of_table(const expression& e, const surroundings& s)
     if (t->by_choice) {
         // An unknown choice may be any printed row.
         for (const std::string& choice : x.choice.empty() ? t->choices : std::vector<std::string>{x.choice}) {
-            const std::vector<spread> printed = look_up_choice(*t, e.column, choice);
-            v.numbers.insert(v.numbers.end(), printed.begin(), printed.end());
+            // Where a cell prints several figures its sources disagree: all of them count, so the stricter one judges.
+            std::optional<spread> all;
+            for (const spread& printed : look_up_choice(*t, e.column, choice)) {
+                const range wide =
+                    all ? range{std::min(all->whole.low, printed.whole.low), std::max(all->whole.high, printed.whole.high)} : printed.whole;
+                all = spread{printed.dim, wide, wide, std::nullopt};
+            }
+            if (all) {
+                v.numbers.push_back(*all);
+            }
         }
         if (v.numbers.empty()) {
             v.missing.push_back("a row for '" + x.choice + "' in: " + t->title);

@@ -193,8 +193,11 @@ value solved_supply::access_fact(const subject& s, state in, const std::string& 
             return *figure;
         }
     }
-    if (name == "one-short-touch-current") {
-        return one_short_touch_current(*this, *a);
+    if (name == "faulted-voltage") {
+        return faulted_voltage(*this, *a);
+    }
+    if (name == "faulted-touch-current") {
+        return faulted_touch_current(*this, *a);
     }
     if (name == "broken-after-2-s") {
         return worst_left_broken(s.nets[0], s.nets[1], 2.0);

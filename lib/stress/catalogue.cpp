@@ -120,7 +120,9 @@ void add_energy(std::vector<fact_spec>& list)
     list.push_back(told("access", "capacitance", dim::capacitance, "all the charge that can flow, at the pair's voltage"));
     list.push_back(told("access", "es1-voltage", dim::voltage, "IEC 62368-1 table 5, ES1 limit at what flows at once"));
     list.push_back(told("access", "es2-voltage", dim::voltage, "IEC 62368-1 table 5, ES2 limit at what flows at once"));
-    list.push_back(solved("access", "one-short-touch-current", dim::current, "through 2 kohm with the worst single resistor body shorted"));
+    list.push_back(solved("access", "faulted-voltage", dim::voltage, "greatest with any single part on its way failed; touchable pairs only"));
+    list.push_back(
+        solved("access", "faulted-touch-current", dim::current, "through 2 kohm, any single part on its way failed; touchable pairs only"));
     list.push_back(truth("access", "label", "as written; absent if not"));
     list.push_back(truth("access", "wet", "used where it is wet, as written"));
     list.push_back(solved("access", "broken-after-2-s", dim::voltage,

@@ -1,4 +1,4 @@
-// What one failed part does to a person: a limiting resistor shorted, the output joined to the input pins.
+// What one failed part does to a person: a limit shorted or what holds a pair down opened, the output joined to the input pins.
 #include "stress/part_facts.hpp"
 #include "stress/paths.hpp"
 #include "stress/spread_math.hpp"
@@ -25,33 +25,51 @@ std::set<std::string> fed_through(const solved_supply& s, const std::vector<std:
 
 } // namespace
 
-value one_short_touch_current(const solved_supply& s, const access_item& a)
+/// Worst of one figure with each part on the way failed in each mode of its kind: what limits shorted, what holds down opened.
+template<class Figure>
+value worst_after_fault(const solved_supply& s, const access_item& a, const value& as_built, Figure figure)
 {
-    value worst = a.touch_current.at(state::no_load);
-    worst = greater(worst, a.touch_current.at(state::running));
+    if (!a.touchable) {
+        // Looked at only where a hand comes without opening anything.
+        return missing_value(value::type::number, {a.about.name + " after a fault: it is behind a cover"});
+    }
+    value worst = as_built;
     std::string by;
     const std::set<std::string> near = fed_through(s, a.where.nets);
-    for (const part& p : s.bodies().parts) {
-        // Behind a stiff net a resistor changes nothing here.
-        if (p.kind != "resistor" || (!near.contains(p.terminals[0].net) && !near.contains(p.terminals[1].net))) {
+    for (const change& c : single_faults(s.bodies(), s.data())) {
+        const part* p = s.bodies().find_part(c.ref);
+        // Behind a stiff net a part changes nothing here.
+        const bool here =
+            p != nullptr && std::any_of(p->terminals.begin(), p->terminals.end(), [&](const terminal& t) { return near.contains(t.net); });
+        const change_result failed = here ? apply(s.bodies(), s.data(), c) : change_result{{}, "elsewhere"};
+        if (!failed.refused.empty()) {
             continue;
         }
-        change shorted;
-        shorted.sort = change::what::part_fault;
-        shorted.ref = p.ref;
-        shorted.mode = "short";
-        const change_result faulted = apply(s.bodies(), s.data(), shorted);
-        if (!faulted.refused.empty()) {
-            continue;
+        const rail output = find_rail(failed.edited, s.data()); // a part of the feedback may be among them
+        for (const state in : {state::running, state::no_load}) {
+            const auto before = highest(worst);
+            worst = greater(worst, magnitude(figure(failed.edited, output, in)));
+            by = before && highest(worst) && *highest(worst) > *before * (1.0 + 1e-12) ? describe(c) : by;
         }
-        const value i =
-            magnitude(current_through(faulted.edited, s.data(), s.output(), state::no_load, a.where.nets[0], a.where.nets[1], standard_body));
-        const auto before = highest(worst);
-        worst = greater(worst, i);
-        by = before && highest(worst) && *highest(worst) > *before * (1.0 + 1e-12) ? p.ref : by;
     }
-    worst.shown.formula = "into 2 kohm with each resistor body shorted in turn" + (by.empty() ? "" : "; worst " + by);
+    worst.shown.formula = "each part on the way failed in turn" + (by.empty() ? std::string() : "; worst " + by);
     return worst;
+}
+
+value faulted_voltage(const solved_supply& s, const access_item& a)
+{
+    const value built = hull(a.voltage.at(state::running), a.voltage.at(state::no_load));
+    return worst_after_fault(s, a, built, [&](const supply& edited, const rail& output, state in) {
+        return solve_dc(edited, s.data(), output, in).voltage(a.where.nets[0], a.where.nets[1]);
+    });
+}
+
+value faulted_touch_current(const solved_supply& s, const access_item& a)
+{
+    const value built = greater(a.touch_current.at(state::no_load), a.touch_current.at(state::running));
+    return worst_after_fault(s, a, built, [&](const supply& edited, const rail& output, state in) {
+        return current_through(edited, s.data(), output, in, a.where.nets[0], a.where.nets[1], standard_body);
+    });
 }
 
 namespace {

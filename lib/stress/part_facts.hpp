@@ -37,8 +37,10 @@ struct meter_error {
 };
 meter_error worst_meter_error(const solved_supply& s);
 
-/// Current through the standard's body with the worst single resistor body shorted.
-value one_short_touch_current(const solved_supply& s, const access_item& a);
+/// Of a touchable pair, with each single part on its way to the stiff nets failed in each mode of its kind: greatest voltage, and greatest current
+/// through the standard's body.
+value faulted_voltage(const solved_supply& s, const access_item& a);
+value faulted_touch_current(const solved_supply& s, const access_item& a);
 
 /// Where the input pins settle when a part that keeps the output from them fails: charge shared with the input's own capacitors.
 value input_after_fault(const solved_supply& s);

@@ -35,6 +35,10 @@ public:
         } else if (entry_.value.find("topology") == nullptr) {
             r_.complain(c_.at, "no 'topology': boost, flyback, boost-multiplier or module");
         }
+        const auto isolates = c_.fields.find("isolates");
+        if (isolates != c_.fields.end() && c_.topology.starts_with("boost") && *isolates->second.truth()) {
+            r_.complain(isolates->second.at, "a " + c_.topology + " stage is one circuit with its input: it isolates nothing");
+        }
         c_.inductor = reference("inductor", {"inductor", "transformer"});
         c_.power_switch = reference("switch", {"mosfet", "bjt"});
         c_.rectifier = reference("rectifier", {"diode"});

@@ -91,6 +91,7 @@ TEST_CASE("trees")
         {"package = \"1206\"", "(package = \"1206\")"},
         {"time-to(60 V) <= 5 s", "(time-to(60 V) <= 5 s)"},
         {"voltage <= table(\"iec-60664-1-creepage\", \"PD1\", 100 V) * 1 V / 1 mm", "0"},
+        {"table(\"resistor-body\", \"power\", package) > power", "(table(\"resistor-body\", \"power\", package) > power)"},
         {"-voltage <= 5 V", "(-voltage <= 5 V)"},
         {"(voltage - 5 V) <= 1 kV", "((voltage - 5 V) <= 1 kV)"},
         {"voltage <= 1 V + 2 V - 3 V", "(voltage <= ((1 V + 2 V) - 3 V))"},
@@ -134,6 +135,11 @@ TEST_CASE("diagnostics with their column")
         {"table(\"creepage\", \"PD1\", voltage) <= 5 mm", "1: no table 'creepage'"},
         {"table(\"iec-60664-1-creepage\", \"PD9\", voltage) <= 5 mm", "1: table 'iec-60664-1-creepage' has no column 'PD9'"},
         {"table(\"iec-60664-1-creepage\", \"PD1\", power) <= 5 mm", "38: the axis of 'iec-60664-1-creepage' is a voltage, not a power"},
+        {"table(\"resistor-body\", \"power\", voltage) <= 1 W", "33: the axis of 'resistor-body' is the choice 'package', not a voltage"},
+        {"table(\"iec-60664-1-creepage\", \"PD1\", package) <= 5 mm", "38: the axis of 'iec-60664-1-creepage' is a voltage, not a choice"},
+        {"table(\"derating-capacitor-nasa\", \"share\", package) <= 1",
+         "43: the axis of 'derating-capacitor-nasa' is the choice 'dielectric', not a choice"},
+        {"power <= table(\"resistor-body\", \"limiting-voltage\", package)", "7: a power on the left, a voltage on the right"},
         {"table(voltage) <= 5 mm", "7: a word in quotes is due here"},
         {"idle.voltage <= 5 V", "1: no state 'idle': start-up, running, no-load, standby or switched-off"},
         {"no-load. <= 5 V", "9: a name is due after the state"},
@@ -235,4 +241,23 @@ TEST_CASE("a time that never comes is longer than any limit")
     f.values["time"] = never;
     CHECK(judged("time-to(60 V) <= 5 s", f).certain_fail);
     CHECK(judged("time-to(60 V) > 5 s", f).whole == tri::yes);
+}
+
+TEST_CASE("a table over a choice: the row asked for, the stricter of several figures, open where the choice is not known")
+{
+    given f;
+    f.values["package"] = choice_of("1206"); // printed 0.25 W, 0.125 W
+    const std::string within = "power <= table(\"resistor-body\", \"power\", package)";
+    f.values["power"] = number(exactly({0.124, dim::power}));
+    CHECK(judged(within, f).whole == tri::yes);
+    f.values["power"] = number(exactly({0.126, dim::power}));
+    CHECK(judged(within, f).breached);
+    CHECK_FALSE(judged(within, f).certain_fail);
+    f.values["power"] = number(exactly({0.251, dim::power}));
+    CHECK(judged(within, f).certain_fail);
+    f.values["package"] = choice_of("2512 pulse-proof"); // printed "-"
+    CHECK(judged(within, f).whole == tri::unknown);
+    CHECK_FALSE(judged(within, f).missing.empty());
+    f.values["package"] = missing_value(value::type::choice, {"R1.package"});
+    CHECK(judged(within, f).missing == std::vector<std::string>{"R1.package"});
 }
