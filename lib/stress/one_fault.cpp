@@ -56,9 +56,27 @@ value worst_after_fault(const solved_supply& s, const access_item& a, const valu
     return worst;
 }
 
+namespace {
+
+/// The pair already has the whole rail, which stands above the return and the input and does not hang on a part near the pair: no fault gives more.
+bool has_the_whole_rail(const solved_supply& s, const access_item& a, const value& built)
+{
+    const supply& w = s.written();
+    const auto rail = highest(s.output().output);
+    const auto input = highest(written_value(w.fed.voltage, value::type::number, "input.voltage"));
+    const bool by_feedback = !w.stage || !w.stage->feedback_net.empty();
+    return a.touchable && built.missing.empty() && s.output().output.missing.empty() && !by_feedback && s.output().negative == w.return_net && rail &&
+           input && *input <= *rail && highest(built) && *highest(built) >= *rail;
+}
+
+} // namespace
+
 value faulted_voltage(const solved_supply& s, const access_item& a)
 {
     const value built = hull(a.voltage.at(state::running), a.voltage.at(state::no_load));
+    if (has_the_whole_rail(s, a, built)) {
+        return built;
+    }
     return worst_after_fault(s, a, built, [&](const supply& edited, const rail& output, state in) {
         return solve_dc(edited, s.data(), output, in).voltage(a.where.nets[0], a.where.nets[1]);
     });
