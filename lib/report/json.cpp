@@ -31,7 +31,7 @@ std::string unit_of(const dimension& d)
 
 json end_of(double x)
 {
-    return std::isfinite(x) ? json(x) : json(nullptr);
+    return std::isfinite(x) ? json(x == 0.0 ? 0.0 : x) : json(nullptr); // no minus before nothing
 }
 
 json of_spread(const spread& s)
@@ -39,7 +39,7 @@ json of_spread(const spread& s)
     json j;
     j["low"] = end_of(s.whole.low);
     if (s.nominal) {
-        j["nominal"] = *s.nominal;
+        j["nominal"] = end_of(*s.nominal);
     }
     j["high"] = end_of(s.whole.high);
     j["in-use"] = json::array({end_of(s.in_use.low), end_of(s.in_use.high)});
@@ -115,6 +115,9 @@ json of_finding(const finding& f)
            {"state", word_for(f.in)},
            {"change", f.change},
            {"verdict", word_for(f.judged)}};
+    if (f.judged == verdict::not_applicable && f.advice.empty()) {
+        return j; // counted, nothing to tell
+    }
     if (!f.marginal_by.empty()) {
         j["marginal-by"] = f.marginal_by;
     }

@@ -234,6 +234,10 @@ private:
             b.span_voltage->shown.formula = "greatest voltage between two terminals of the trimmer";
             b.track_current->shown.formula = "greater section current, wiper anywhere in its travel";
             b.power.shown.formula = "both sections, wiper anywhere in its travel";
+        } else if (std::any_of(e.forms.begin(), e.forms.end(), [](form f) { return f == form::closed || f == form::inductance; })) {
+            // What is closed joins its nets: the nodal solve tells no current through it, least of all none.
+            b.current = missing_value(value::type::number, {"the current through " + e.ref});
+            b.power = missing_value(value::type::number, {"the power in " + e.ref});
         } else if (const int branch = whole_.branch_of[index]; branch >= 0 && solved()) {
             b.current = to_value(at_use_.current[at(branch)], at_whole_.current[at(branch)], dim::current);
             b.power = to_value(at_use_.power[at(branch)], at_whole_.power[at(branch)], dim::power);

@@ -226,6 +226,23 @@ label = true
     CHECK(timed);
 }
 
+TEST_CASE("law 3: what is closed has no current of its own and none is told")
+{
+    const audit_result r = *run(sample("tide-clock-corrected.toml")).result;
+    int closed = 0;
+    for (const part_facts& p : r.parts) {
+        if (p.kind == "fuse" || p.kind == "inductor") {
+            for (const part_facts::in_state& s : p.states) {
+                CHECK(s.current.numbers.empty());
+                CHECK((p.kind != "fuse" || !s.current.missing.empty()));
+                CHECK(s.power.numbers.empty());
+                ++closed;
+            }
+        }
+    }
+    CHECK(closed == 6); // F1 and L1 in three states
+}
+
 TEST_CASE("law 6: unknown packages must agree in every published value")
 {
     const std::string text = sample("tide-clock-corrected.toml");
