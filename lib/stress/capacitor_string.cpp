@@ -52,18 +52,19 @@ const part* next_in_string(const solved_supply& s, const part& c, const std::str
     return only_across ? next : nullptr;
 }
 
-/// Least conductance of the resistors straight across a capacitor; 0 without any.
-double balancing_conductance(const solved_supply& s, const part& c)
+/// The resistors straight across a capacitor, over their tolerance; no upper end without any.
+range balancing_ohms(const solved_supply& s, const part& c)
 {
-    double siemens = 0.0;
+    range siemens{0.0, 0.0};
     for (const part& p : s.bodies().parts) {
         const field* ohms = p.kind == "resistor" ? p.find("value") : nullptr;
         if (ohms != nullptr && ohms->number() != nullptr && touches(p, c.terminals[0].net) && touches(p, c.terminals[1].net) &&
-            ohms->number()->whole.high > 0.0) {
-            siemens += 1.0 / ohms->number()->whole.high;
+            ohms->number()->whole.low > 0.0) {
+            siemens.low += 1.0 / ohms->number()->whole.high;
+            siemens.high += 1.0 / ohms->number()->whole.low;
         }
     }
-    return siemens;
+    return siemens.low > 0.0 ? range{1.0 / siemens.high, 1.0 / siemens.low} : range{unbounded, unbounded};
 }
 
 value string_voltage(const solved_supply& s, const capacitor_string& chain)
@@ -76,7 +77,17 @@ value string_voltage(const solved_supply& s, const capacitor_string& chain)
     return v;
 }
 
-/// R <= (n U_rated - U_bus)/((n - 1) dI): one leaks nothing, all others the most. The published form without (n - 1) is right for two only.
+/// The greatest resistance across one that leaks nothing while the others, S across them in all, leak the most: R (U + I S) <= U_rated (R + S).
+double limit_beside(double others, double bus, double rated, double leakage)
+{
+    if (!std::isfinite(others)) {
+        return rated / leakage;
+    }
+    const double over = bus + leakage * others - rated;
+    return over > 0.0 ? rated * others / over : unbounded;
+}
+
+/// With equal resistors (n U_rated - U_bus)/((n - 1) dI); tolerance counts, so the others are taken at either end of theirs.
 value balancing_limit(const solved_supply& s, const part& p, const capacitor_string& chain)
 {
     const value bus = string_voltage(s, chain);
@@ -84,7 +95,12 @@ value balancing_limit(const solved_supply& s, const part& p, const capacitor_str
     inherit(v, bus);
     double leakage = 0.0;
     double rated = unbounded;
+    range others{0.0, 0.0};
     for (const part* member : chain.members) {
+        if (member->ref != p.ref) {
+            const range ohms = balancing_ohms(s, *member);
+            others = {others.low + ohms.low, others.high + ohms.high};
+        }
         const value one = leakage_of(s, *member);
         inherit(v, one);
         leakage = std::max(leakage, highest(one).value_or(0.0));
@@ -102,10 +118,9 @@ value balancing_limit(const solved_supply& s, const part& p, const capacitor_str
         }
         return v;
     }
-    const auto n = static_cast<double>(chain.members.size());
-    const double ohms = std::max(0.0, (n * rated - *most) / ((n - 1.0) * leakage));
+    const double ohms = std::min(limit_beside(others.low, *most, rated, leakage), limit_beside(others.high, *most, rated, leakage));
     v.numbers.push_back(exactly({ohms, dim::resistance}));
-    v.shown.formula = "(n U_rated - U)/((n - 1) I_leak), n = " + std::to_string(chain.members.size());
+    v.shown.formula = "U_rated S/(U + S I_leak - U_rated), S across the others, n = " + std::to_string(chain.members.size());
     return v;
 }
 
@@ -162,12 +177,12 @@ value string_fact(const solved_supply& s, const part& p, const std::string& name
     if (name == "in-series") {
         return truth_of(chain.has_value());
     }
-    const double siemens = balancing_conductance(s, p);
+    const double ohms = balancing_ohms(s, p).high;
     if (name == "balanced") {
-        return truth_of(siemens > 0.0);
+        return truth_of(std::isfinite(ohms));
     }
     if (name == "balancing-resistance") {
-        return siemens > 0.0 ? number(exactly({1.0 / siemens, dim::resistance})) : missing_value(value::type::number, {"a resistor across " + p.ref});
+        return std::isfinite(ohms) ? number(exactly({ohms, dim::resistance})) : missing_value(value::type::number, {"a resistor across " + p.ref});
     }
     if (!chain) {
         return missing_value(value::type::number, {p.ref + " in a string"});

@@ -304,6 +304,22 @@ TEST_CASE("balancing resistors against brute force over every leakage corner")
           verdict::not_applicable);
 }
 
+TEST_CASE("tolerance of balancing resistors and leakage add up")
+{
+    // Derived: 480 V on two of 250 V, 10 Mohm +-3 %, 1 uA: 10.3 (480 + 9.7)/20 = 252.2 V, though 247.2 V without leakage and 245 V without tolerance.
+    const auto told = [](const char* ohms) {
+        const std::string parts =
+            fmt::format("R1 = {{ nets = [\"HT\", \"M\"], value = \"{0}\" }}\nR2 = {{ nets = [\"M\", \"0V\"], value = \"{0}\" }}\n[capacitor]\n"
+                        "C1 = {{ nets = [\"HT\", \"M\"], value = \"10 uF\", rated-voltage = \"250 V\", leakage = \"max 1 uA\" }}\n"
+                        "C2 = {{ nets = [\"M\", \"0V\"], value = \"10 uF\", rated-voltage = \"250 V\", leakage = \"max 1 uA\" }}\n",
+                        ohms);
+        return judged(rail(480, parts), "series-balancing", "C1");
+    };
+    CHECK(told("10M +-3%") == verdict::fail);
+    CHECK(told("10M +-0%") == verdict::pass);
+    CHECK(told("1M +-3%") == verdict::pass);
+}
+
 TEST_CASE("the initial split of two capacitors of 20 %: the smaller sees 60 %")
 {
     // Derived in the notes.
