@@ -104,6 +104,7 @@ struct spacing_facts {
     struct required {
         std::string limit_set;
         value clearance, creepage;
+        std::optional<basis> rests_on; // the weakest of the tables read; empty: none was
     };
     std::vector<required> asked;
     struct measured_gap {

@@ -57,7 +57,8 @@ const std::vector<std::string>& not_seen()
 {
     static const std::vector<std::string> list{
         "the converter's own currents, ringing, saturation and start-up (the switch's spike is as written or assumed)",
-        "what follows a failed part, except where a gap is bridged or a discharge path is missing",
+        "what follows a failed part, except where a gap is bridged, a discharge path is missing, a part on the way to what can be touched fails, or "
+        "the rectifier shorts",
         "what a running supply can push through a person beyond its series resistances (the rail is taken as stiff)",
         "recovery of a capacitor by dielectric absorption after a short", "anything on the mains side"};
     return list;

@@ -29,6 +29,22 @@ std::string strictest(const std::vector<spacing_facts::required>& asked, value s
     return name;
 }
 
+/// The weakest basis among the tables that the figures were read from.
+std::optional<basis> weakest_basis(const library& lib, const set_need& need)
+{
+    std::optional<basis> weakest;
+    for (const value* v : {need.clearance, need.creepage}) {
+        for (const evidence::input& i : v->shown.inputs) {
+            const auto t =
+                std::find_if(lib.tables.begin(), lib.tables.end(), [&](const table& one) { return one.at == i.at && one.title == i.name; });
+            if (t != lib.tables.end()) {
+                weakest = weakest ? std::max(*weakest, t->from.rests_on) : t->from.rests_on;
+            }
+        }
+    }
+    return weakest;
+}
+
 /// One figure against one limit at their worst ends.
 verdict kept(const value& measured, const value& asked, bool functional)
 {
@@ -84,7 +100,7 @@ spacing_facts facts_of(const solved_supply& s, const subject& about, const value
     for (const std::string& name : sets) {
         const set_need one = need_of(need, name);
         if (told(one.clearance) || told(one.creepage)) {
-            f.asked.push_back({name, *one.clearance, *one.creepage});
+            f.asked.push_back({name, *one.clearance, *one.creepage, weakest_basis(s.data(), one)});
         }
     }
     f.clearance_governs = strictest(f.asked, &spacing_facts::required::clearance);

@@ -203,7 +203,11 @@ json of_spacing(const spacing_facts& s)
 {
     json j{{"nets", s.about.nets}, {"voltage", of_value(s.working_voltage)}};
     for (const auto& r : s.asked) {
-        j["required"][r.limit_set] = {{"clearance", of_value(r.clearance)}, {"creepage", of_value(r.creepage)}};
+        json& set = j["required"][r.limit_set];
+        set = {{"clearance", of_value(r.clearance)}, {"creepage", of_value(r.creepage)}};
+        if (r.rests_on) {
+            set["basis"] = word_for(*r.rests_on);
+        }
     }
     j["insulation"] = s.insulation;
     j["governs"] = {{"clearance", s.clearance_governs}, {"creepage", s.creepage_governs}};

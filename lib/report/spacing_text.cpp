@@ -31,6 +31,11 @@ std::string short_figure(const value& v)
     return v.numbers.empty() && v.missing.empty() ? "-" : v.numbers.empty() ? "unknown" : greatest(v, 3);
 }
 
+std::string words_for(basis b)
+{
+    return b == basis::confirmed ? "confirmed" : b == basis::memory ? "from memory" : "practice";
+}
+
 /// The least measured figure: what counts.
 std::string least_figure(const value& v)
 {
@@ -73,9 +78,9 @@ private:
         }
     }
 
-    void row(const std::string& name, const std::string& clearance, const std::string& creepage)
+    void row(const std::string& name, const std::string& clearance, const std::string& creepage, const std::string& more = {})
     {
-        line("  " + padded(name, 16) + padded(clearance, 14) + creepage);
+        line("  " + padded(name, 16) + padded(clearance, 14) + padded(creepage, 14) + more);
     }
 
     /// Pairs of which the same is told stand in one block, where the first of them is due.
@@ -115,7 +120,8 @@ private:
             const auto marked = [&](const value& v, const std::string& governs) {
                 return short_figure(v) + (asked.limit_set == governs ? " *" : "");
             };
-            row(asked.limit_set, marked(asked.clearance, s.clearance_governs), marked(asked.creepage, s.creepage_governs));
+            row(asked.limit_set, marked(asked.clearance, s.clearance_governs), marked(asked.creepage, s.creepage_governs),
+                asked.rests_on ? words_for(*asked.rests_on) : "");
             if (o_.show_working) {
                 working(asked);
             }

@@ -46,6 +46,17 @@ std::string filled(const std::string& message, const subject& about, const findi
     return out + message.substr(at);
 }
 
+std::vector<std::string> each_once(const std::vector<std::string>& names)
+{
+    std::vector<std::string> out;
+    for (const std::string& name : names) {
+        if (std::find(out.begin(), out.end(), name) == out.end()) {
+            out.push_back(name);
+        }
+    }
+    return out;
+}
+
 verdict verdict_for(const truth_outcome& t, bool person, std::string& marginal_by)
 {
     const bool fails = person ? t.breached : t.breached_in_use;
@@ -221,7 +232,7 @@ finding judge_one(const rule& r, const library& lib, const subject& about, state
             f.judged = r.at_worst;
             f.marginal_by = r.at_worst == verdict::marginal ? "tolerance" : "";
         }
-        f.missing = f.judged == verdict::fail ? std::vector<std::string>{} : t.missing;
+        f.missing = f.judged == verdict::fail ? std::vector<std::string>{} : each_once(t.missing);
         f.assumed = t.assumed;
     } else {
         f.judged = verdict::not_applicable; // advice is told, never judged

@@ -9,28 +9,59 @@ namespace onehand {
 
 namespace {
 
-bool touches(const part& p, const std::string& net)
-{
-    return std::any_of(p.terminals.begin(), p.terminals.end(), [&](const terminal& t) { return t.net == net; });
-}
+constexpr double damping = 1000.0; // ohm: up to here a resistor between two capacitors joins them (practice); balancing takes far more
 
-std::string other_end(const part& p, const std::string& net)
-{
-    return p.terminals[0].net == net ? p.terminals[1].net : p.terminals[0].net;
-}
+/// Nets that wires, coils, fuses, closed switches and damping resistors make one, each named by its first.
+class joined_nets {
+public:
+    explicit joined_nets(const solved_supply& s)
+    {
+        using form = element_spec::form;
+        for (const element& e : wire(s.bodies(), s.data(), state::running, s.output().stage_parts)) {
+            const auto ohms = e.values.find(form::resistance);
+            const bool small =
+                e.wiper.empty() && ohms != e.values.end() && !ohms->second.numbers.empty() && ohms->second.numbers.front().whole.high <= damping;
+            const bool closed =
+                surely_conducts(e) && std::all_of(e.forms.begin(), e.forms.end(), [](form f) { return f == form::closed || f == form::inductance; });
+            if ((small || closed) && root(e.from) != root(e.to)) {
+                parent_[root(e.from)] = root(e.to);
+            }
+        }
+    }
+    std::string root(std::string net) const
+    {
+        for (auto it = parent_.find(net); it != parent_.end(); it = parent_.find(net)) {
+            net = it->second;
+        }
+        return net;
+    }
+    bool touches(const part& p, const std::string& net) const
+    {
+        return std::any_of(p.terminals.begin(), p.terminals.end(), [&](const terminal& t) { return root(t.net) == root(net); });
+    }
+    /// A part with both ends on one joined net stands across nothing.
+    bool inside(const part& p) const { return p.terminals.size() == 2 && root(p.terminals[0].net) == root(p.terminals[1].net); }
+    std::string other_end(const part& p, const std::string& net) const
+    {
+        return root(root(p.terminals[0].net) == root(net) ? p.terminals[1].net : p.terminals[0].net);
+    }
+
+private:
+    std::map<std::string, std::string> parent_;
+};
 
 /// The capacitor beyond a junction of two capacitors that nothing but resistors across either of them touches.
-const part* next_in_string(const solved_supply& s, const part& c, const std::string& junction)
+const part* next_in_string(const solved_supply& s, const joined_nets& nets, const part& c, const std::string& junction)
 {
     const supply& built = s.bodies();
-    const bool held = junction == built.return_net || std::find(built.fed.nets.begin(), built.fed.nets.end(), junction) != built.fed.nets.end() ||
-                      junction == s.output().positive || junction == s.output().negative;
-    if (held) {
+    std::vector<std::string> held{built.return_net, s.output().positive, s.output().negative};
+    held.insert(held.end(), built.fed.nets.begin(), built.fed.nets.end());
+    if (std::any_of(held.begin(), held.end(), [&](const std::string& net) { return !net.empty() && nets.root(net) == nets.root(junction); })) {
         return nullptr;
     }
     const part* next = nullptr;
     for (const part& p : built.parts) {
-        if (p.ref == c.ref || !touches(p, junction)) {
+        if (p.ref == c.ref || !nets.touches(p, junction) || nets.inside(p)) {
             continue;
         }
         if (p.kind == "capacitor") {
@@ -45,21 +76,33 @@ const part* next_in_string(const solved_supply& s, const part& c, const std::str
     if (next == nullptr) {
         return nullptr;
     }
-    const std::set<std::string> ends{other_end(c, junction), other_end(*next, junction)};
+    const std::set<std::string> ends{nets.other_end(c, junction), nets.other_end(*next, junction)};
     const bool only_across = std::all_of(built.parts.begin(), built.parts.end(), [&](const part& p) {
-        return p.kind != "resistor" || !touches(p, junction) || ends.contains(other_end(p, junction));
+        return p.kind != "resistor" || !nets.touches(p, junction) || nets.inside(p) || ends.contains(nets.other_end(p, junction));
     });
     return only_across ? next : nullptr;
 }
 
-/// The resistors straight across a capacitor, over their tolerance; no upper end without any.
+/// Resistors straight across a capacitor.
+std::vector<const part*> balancers(const solved_supply& s, const part& c)
+{
+    const joined_nets nets(s);
+    std::vector<const part*> list;
+    for (const part& p : s.bodies().parts) {
+        if (p.kind == "resistor" && !nets.inside(p) && nets.touches(p, c.terminals[0].net) && nets.touches(p, c.terminals[1].net)) {
+            list.push_back(&p);
+        }
+    }
+    return list;
+}
+
+/// Those resistors together, over their tolerance; no upper end without any of known value.
 range balancing_ohms(const solved_supply& s, const part& c)
 {
     range siemens{0.0, 0.0};
-    for (const part& p : s.bodies().parts) {
-        const field* ohms = p.kind == "resistor" ? p.find("value") : nullptr;
-        if (ohms != nullptr && ohms->number() != nullptr && touches(p, c.terminals[0].net) && touches(p, c.terminals[1].net) &&
-            ohms->number()->whole.low > 0.0) {
+    for (const part* p : balancers(s, c)) {
+        const field* ohms = p->find("value");
+        if (ohms != nullptr && ohms->number() != nullptr && ohms->number()->whole.low > 0.0) {
             siemens.low += 1.0 / ohms->number()->whole.high;
             siemens.high += 1.0 / ohms->number()->whole.low;
         }
@@ -84,7 +127,8 @@ double limit_beside(double others, double bus, double rated, double leakage)
         return rated / leakage;
     }
     const double over = bus + leakage * others - rated;
-    return over > 0.0 ? rated * others / over : unbounded;
+    constexpr double any = 1e15; // ohm: more than any resistor
+    return over > 0.0 ? std::min(any, rated * others / over) : any;
 }
 
 /// With equal resistors (n U_rated - U_bus)/((n - 1) dI); tolerance counts, so the others are taken at either end of theirs.
@@ -152,6 +196,7 @@ value initial_share(const solved_supply& s, const part& p, const capacitor_strin
 
 std::optional<capacitor_string> string_of(const solved_supply& s, const part& p)
 {
+    const joined_nets nets(s);
     capacitor_string chain;
     chain.members = {&p};
     chain.from = p.terminals[0].net;
@@ -159,12 +204,12 @@ std::optional<capacitor_string> string_of(const solved_supply& s, const part& p)
     for (const bool forward : {true, false}) {
         std::string& end = forward ? chain.to : chain.from;
         const part* last = &p;
-        while (const part* next = next_in_string(s, *last, end)) {
+        while (const part* next = next_in_string(s, nets, *last, end)) {
             if (std::find(chain.members.begin(), chain.members.end(), next) != chain.members.end()) {
                 return std::nullopt; // a ring divides nothing
             }
             chain.members.insert(forward ? chain.members.end() : chain.members.begin(), next);
-            end = other_end(*next, end);
+            end = nets.other_end(*next, end);
             last = next;
         }
     }
@@ -178,11 +223,14 @@ value string_fact(const solved_supply& s, const part& p, const std::string& name
         return truth_of(chain.has_value());
     }
     const double ohms = balancing_ohms(s, p).high;
+    const std::vector<const part*> across = balancers(s, p);
     if (name == "balanced") {
-        return truth_of(std::isfinite(ohms));
+        return truth_of(!across.empty());
     }
     if (name == "balancing-resistance") {
-        return std::isfinite(ohms) ? number(exactly({ohms, dim::resistance})) : missing_value(value::type::number, {"a resistor across " + p.ref});
+        return std::isfinite(ohms)
+                   ? number(exactly({ohms, dim::resistance}))
+                   : missing_value(value::type::number, {across.empty() ? "a resistor across " + p.ref : across.front()->ref + ".value"});
     }
     if (!chain) {
         return missing_value(value::type::number, {p.ref + " in a string"});

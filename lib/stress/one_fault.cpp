@@ -9,22 +9,6 @@ namespace onehand {
 
 namespace {
 
-/// Nets between the accessible ones and the stiff ones: what stands in series with a body.
-std::set<std::string> fed_through(const solved_supply& s, const std::vector<std::string>& nets)
-{
-    const std::set<std::string> stiff = stiff_nets(s);
-    const std::vector<element> wired = wire(s.bodies(), s.data(), state::no_load, s.output().stage_parts);
-    std::set<std::string> near;
-    for (const std::string& net : nets) {
-        if (!stiff.contains(net)) {
-            near.merge(reach(wired, net, [&](const element& e) { return may_conduct(e) && !stiff.contains(e.from) && !stiff.contains(e.to); }));
-        }
-    }
-    return near;
-}
-
-} // namespace
-
 /// Worst of one figure with each part on the way failed in each mode of its kind: what limits shorted, what holds down opened.
 template<class Figure>
 value worst_after_fault(const solved_supply& s, const access_item& a, const value& as_built, Figure figure)
@@ -35,7 +19,7 @@ value worst_after_fault(const solved_supply& s, const access_item& a, const valu
     }
     value worst = as_built;
     std::string by;
-    const std::set<std::string> near = fed_through(s, a.where.nets);
+    const std::set<std::string> near = weak_nets(s, a.where.nets);
     for (const change& c : single_faults(s.bodies(), s.data())) {
         const part* p = s.bodies().find_part(c.ref);
         // Behind a stiff net a part changes nothing here.
@@ -55,8 +39,6 @@ value worst_after_fault(const solved_supply& s, const access_item& a, const valu
     worst.shown.formula = "each part on the way failed in turn" + (by.empty() ? std::string() : "; worst " + by);
     return worst;
 }
-
-namespace {
 
 /// The pair already has the whole rail, which stands above the return and the input and does not hang on a part near the pair: no fault gives more.
 bool has_the_whole_rail(const solved_supply& s, const access_item& a, const value& built)

@@ -28,6 +28,8 @@ value leakage_of(const solved_supply& s, const part& p);
 
 /// Nets whose voltage a load does not move: rail, input, return, and what is joined to them without resistance.
 std::set<std::string> stiff_nets(const solved_supply& s);
+/// The nets between those given and the stiff ones, those given included where they are not stiff.
+std::set<std::string> weak_nets(const solved_supply& s, const std::vector<std::string>& from);
 /// Greatest resistance that a net is fed through, everything stiff joined: rail, input, return. Unbounded where nothing ties it.
 std::optional<double> source_resistance(const solved_supply& s, const std::string& net);
 /// How much too low a 10 Mohm meter reads at worst on any net, and on which.

@@ -26,24 +26,6 @@ std::vector<element> wired(const solved_supply& s)
     return wire(s.bodies(), s.data(), state::no_load, s.output().stage_parts);
 }
 
-/// One element as resistances; a wiper is fed most weakly from the middle of its track.
-template<class Add>
-void add_resistances(const element& e, Add add)
-{
-    const auto v = e.values.find(e.wiper.empty() ? form::resistance : form::track);
-    if (without_resistance(e)) {
-        add(e.from, e.to, range{least_ohms, least_ohms});
-    } else if (v != e.values.end() && !v->second.numbers.empty()) {
-        const range& ohms = v->second.numbers.front().whole;
-        if (e.wiper.empty()) {
-            add(e.from, e.to, ohms);
-        } else {
-            add(e.from, e.wiper, range{0.5 * ohms.low, 0.5 * ohms.high});
-            add(e.wiper, e.to, range{0.5 * ohms.low, 0.5 * ohms.high});
-        }
-    }
-}
-
 } // namespace
 
 std::set<std::string> stiff_nets(const solved_supply& s)
@@ -62,6 +44,26 @@ std::set<std::string> stiff_nets(const solved_supply& s)
     return nets;
 }
 
+std::set<std::string> weak_nets(const solved_supply& s, const std::vector<std::string>& from)
+{
+    const std::set<std::string> stiff = stiff_nets(s);
+    const std::vector<element> all = wired(s);
+    std::set<std::string> near;
+    const auto add = [&](const std::string& net) { return !net.empty() && !stiff.contains(net) && near.insert(net).second; };
+    std::for_each(from.begin(), from.end(), add);
+    for (bool grew = true; grew;) {
+        grew = false;
+        for (const element& e : all) {
+            if (may_conduct(e) && (near.contains(e.from) || near.contains(e.to) || near.contains(e.wiper))) {
+                for (const std::string& net : {e.from, e.to, e.wiper}) {
+                    grew = add(net) || grew;
+                }
+            }
+        }
+    }
+    return near;
+}
+
 std::optional<double> source_resistance(const solved_supply& s, const std::string& net)
 {
     const std::set<std::string> stiff = stiff_nets(s);
@@ -69,8 +71,7 @@ std::optional<double> source_resistance(const solved_supply& s, const std::strin
         return 0.0;
     }
     const std::vector<element> all = wired(s);
-    // Only what joins the net without passing a stiff one.
-    const std::set<std::string> near = reach(all, net, [&](const element& e) { return !stiff.contains(e.from) && !stiff.contains(e.to); });
+    const std::set<std::string> near = weak_nets(s, {net});
     circuit::network n;
     std::map<std::string, int> node;
     const auto at = [&](const std::string& name) {
@@ -79,15 +80,23 @@ std::optional<double> source_resistance(const solved_supply& s, const std::strin
     const int self = at(net);
     bool tied = false;
     for (const element& e : all) {
-        if (!near.contains(e.from) && !near.contains(e.to)) {
+        if (!near.contains(e.from) && !near.contains(e.to) && !near.contains(e.wiper)) {
             continue;
         }
-        add_resistances(e, [&](const std::string& from, const std::string& to, const range& ohms) {
-            if (at(from) != at(to)) {
-                n.branches.push_back({at(from), at(to), {{circuit::form::resistance, {ohms.low, ohms.high}}}});
-                tied |= at(from) == self || at(to) == self;
-            }
-        });
+        const auto v = e.values.find(e.wiper.empty() ? form::resistance : form::track);
+        const bool closed = without_resistance(e);
+        if (!closed && (v == e.values.end() || v->second.numbers.empty())) {
+            continue;
+        }
+        const range ohms = closed ? range{least_ohms, least_ohms} : v->second.numbers.front().whole;
+        if (!e.wiper.empty()) {
+            const range travel = e.position.numbers.empty() ? range{0.0, 1.0} : e.position.numbers.front().whole;
+            n.tracks.push_back({at(e.from), at(e.wiper), at(e.to), {ohms.low, ohms.high}, {travel.low, travel.high}});
+            tied = true;
+        } else if (at(e.from) != at(e.to)) {
+            n.branches.push_back({at(e.from), at(e.to), {{circuit::form::resistance, {ohms.low, ohms.high}}}});
+            tied |= at(e.from) == self || at(e.to) == self;
+        }
     }
     if (!tied) {
         return std::nullopt;

@@ -320,6 +320,26 @@ TEST_CASE("tolerance of balancing resistors and leakage add up")
     CHECK(told("1M +-3%") == verdict::pass);
 }
 
+TEST_CASE("a string joined by a wire or a damping resistor is a string, and a balancing resistor of unknown value is no absent one")
+{
+    const std::string capacitors =
+        "[capacitor]\nC1 = { nets = [\"HT\", \"M\"], value = \"10 uF +-20%\", rated-voltage = \"250 V\", leakage = \"max 1 uA\" }\n"
+        "C2 = { nets = [\"N\", \"0V\"], value = \"10 uF +-20%\", rated-voltage = \"250 V\", leakage = \"max 1 uA\" }\n";
+    const std::string across = "R1 = { nets = [\"HT\", \"M\"], value = \"100k\" }\nR2 = { nets = [\"N\", \"0V\"], value = \"100k\" }\n";
+    for (const char* joint :
+         {"R3 = { nets = [\"M\", \"N\"], value = \"10 ohm\" }\n", "[wire]\nW1 = { nets = [\"M\", \"N\"], rated-voltage = \"600 V\" }\n"}) {
+        const audit_result r = rail(420, across + joint + capacitors);
+        CAPTURE(joint);
+        CHECK(judged(r, "series-balanced", "C1") == verdict::pass);
+        CHECK(judged(r, "series-initial-share", "C1") == verdict::fail); // 252 V
+        CHECK(found(r, "series-initial-share", "C1")->left->numbers.front().whole.high == doctest::Approx(252.0).epsilon(1e-9).scale(0));
+    }
+    const audit_result unknown =
+        rail(420, "R1 = { nets = [\"HT\", \"M\"] }\nR2 = { nets = [\"M\", \"0V\"] }\n" + replaced(capacitors, "\"N\"", "\"M\""));
+    CHECK(judged(unknown, "series-balanced", "C1") == verdict::pass);
+    CHECK(judged(unknown, "series-balancing", "C1") == verdict::not_shown);
+}
+
 TEST_CASE("the initial split of two capacitors of 20 %: the smaller sees 60 %")
 {
     // Derived in the notes.
@@ -362,6 +382,12 @@ TEST_CASE("a 10 Mohm meter: one megohm 9.1 %, 4.7 megohm 32 %")
     CHECK(error("4.7M") == doctest::Approx(4.7 / 14.7).epsilon(1e-6).scale(0));
     CHECK(std::abs(error("1M") * 100.0 - 9.1) < 0.05);
     CHECK(std::abs(error("4.7M") * 100.0 - 32.0) < 0.05);
+    // A wiper is fed most weakly where both ways to it are alike: 1 Mohm and a track of 2 Mohm to the return give 0.75 Mohm at most, not at
+    // mid-track.
+    const audit_result r =
+        rail(400, "R1 = { nets = [\"HT\", \"A\"], value = \"1M\" }\n[trimmer]\nP1 = { ends = [\"A\", \"0V\"], wiper = \"W\", value = \"2M\" }\n"
+                  "[capacitor]\nC1 = { nets = [\"W\", \"0V\"], value = \"1 nF\" }\n");
+    CHECK(found(r, "meter-loading", "supply")->left->numbers.front().whole.high == doctest::Approx(0.75 / 10.75).epsilon(1e-3).scale(0));
 }
 
 TEST_CASE("a safeguard of one resistor is none and of two it holds as brute force has it")
