@@ -22,6 +22,14 @@ bool against_transients(const spacing_site& site)
     return site.insulation != "functional";
 }
 
+/// A transient that comes in by the input's own two nets stands across the circuit too: declared as such, or the mains wired in.
+bool transient_inside(const spacing_site& site)
+{
+    const auto feed = site.fed->fields.find("feed");
+    const bool wired_in = feed != site.fed->fields.end() && feed->second.text() != nullptr && *feed->second.text() == "mains";
+    return wired_in || site.fed->fields.contains("transient");
+}
+
 /// What reinforced insulation stands (IEC 60664-1, 5.1.6): the next of the preferred impulse voltages, 160 % of what is none of them. An impulse may
 /// also be rated at the preferred one above it and take the step after that; the lesser of both ways, never below the step of the preferred one
 /// below.
@@ -30,7 +38,12 @@ double reinforced_impulse(double volts)
     // 10 and 15 kV stand in the 2020 table of mains only: after 8 kV comes 12 kV.
     constexpr double series[] = {330, 500, 800, 1500, 2500, 4000, 6000, 8000, 12000};
     const auto above = std::lower_bound(std::begin(series), std::end(series), volts * (1.0 - 1e-9));
-    const auto step_of = [&](const double* at) { return at == std::end(series) || at + 1 == std::end(series) ? unbounded : at[1]; };
+    const auto step_of = [&](const double* at) {
+        if (at == std::end(series) || at + 1 == std::end(series)) {
+            return unbounded;
+        }
+        return at[1];
+    };
     const bool preferred = above != std::end(series) && *above <= volts * (1.0 + 1e-9);
     if (preferred && step_of(above) < unbounded) {
         return step_of(above);
@@ -117,7 +130,7 @@ value transient_clearance(const value& impulse, const spacing_site& site)
 void add_coordination(spacing_need& need, const value& working, const value& impulse, const spacing_site& site)
 {
     need.clearance = each_voltage(working, [&](const spread& volts) { return steady_clearance(volts, site); });
-    if (against_transients(site)) {
+    if (against_transients(site) || transient_inside(site)) {
         need.clearance = greater_known(need.clearance, transient_clearance(impulse, site));
     }
     finish_clearance(need.clearance, site, "iec-60664-1-clearance-least", "least");

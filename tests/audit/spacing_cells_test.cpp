@@ -168,7 +168,10 @@ TEST_CASE("IEC 60664-1 table F.1 row by row: the impulse of every mains and cate
     CHECK(clearance(10, {.input = "feed = \"mains\"\nmains-voltage = \"230 V\""}) < 0.0);
     CHECK(clearance(10, {.input = "feed = \"adapter\""}) < 0.0);
     CHECK(clearance(10, {.input = ""}) < 0.0);
-    // Inside one circuit the mains' transients stand on both ends alike.
+    // Inside one circuit the mains' transients stand on both ends alike, unless they come in by the input's own nets.
+    const std::string inside = "cti = 600\ninsulation = \"functional\"";
+    CHECK(same(clearance(100, {.input = transient(2500), .gap = inside}), 1.5));
+    CHECK(same(clearance(100, {.input = "feed = \"mains\"\nmains-voltage = \"230 V\"\novervoltage-category = \"III\"", .gap = inside}), 3.0));
     CHECK(same(clearance(100, {.input = "feed = \"adapter\"\nmains-voltage = \"230 V\"", .gap = "cti = 600\ninsulation = \"functional\""}), 0.003));
 }
 
