@@ -85,7 +85,7 @@ TEST_CASE("random networks with a trimmer: 200 never beaten over its whole trave
     }
 }
 
-TEST_CASE("two trimmers in one component: 60 never beaten over both travels")
+TEST_CASE("two trimmers in one component: 60 never beaten over both travels" * doctest::test_suite("long"))
 {
     std::mt19937 r(20260103);
     int two = 0;
