@@ -98,8 +98,10 @@ value longest_wait(const solved_supply& s, const access_item& a)
         }
     }
     for (const std::string& ref : s.paths_to_break()) {
-        if (!add({false, false, ref})) {
-            return worst;
+        for (const off_case& how : s.off_cases_without(ref)) {
+            if (!add(how)) {
+                return worst;
+            }
         }
     }
     return worst;

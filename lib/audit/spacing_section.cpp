@@ -98,7 +98,8 @@ spacing_facts facts_of(const solved_supply& s, const subject& about, const value
     const spacing_site site{f.insulation, g, &s.written().used, &s.written().fed, &s.data()};
     const spacing_need need = spacing_needed(voltage, site);
     for (const std::string& name : sets) {
-        const set_need one = need_of(need, name);
+        const limit_set* set = s.data().find_limit_set(name);
+        const set_need one = set != nullptr ? need_of(need, *set) : set_need{};
         if (told(one.clearance) || told(one.creepage)) {
             f.asked.push_back({name, *one.clearance, *one.creepage, weakest_basis(s.data(), one)});
         }

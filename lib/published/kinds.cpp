@@ -118,6 +118,8 @@ field_spec read_field(const document& doc, const entry& e, const library& lib, s
     f.positive = r.truth("positive", true);
     f.choices = r.texts("choices", false);
     f.bounds = r.text("bounds", false);
+    f.not_with = r.text("not-with", false);
+    f.instead = r.text("instead", !f.not_with.empty());
     f.per = r.text("per", false);
     const std::string of = r.text("choices-of", false);
     if (!of.empty()) {

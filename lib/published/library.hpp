@@ -108,6 +108,8 @@ struct field_spec {
     std::string column;
     bool limit_is_low = true; // the worst end of several published values: low for a rating
     std::string bounds;       // which fact this rating bounds: "voltage", "power", "current"
+    std::string not_with;     // a field beside which this one says nothing
+    std::string instead;      // what is written there in its place
     std::string per;          // may be written per this other field (a cable's capacitance per length)
     place at;
 

@@ -13,18 +13,36 @@
 
 namespace onehand {
 
-/// Appends to `bytes`.
-class packer {
+/// What packing and unpacking share: several values in turn, and a pair by its halves.
+template<class Self>
+class both_ways {
 public:
-    std::string bytes;
-
     template<class... T>
     void operator()(T&... value)
     {
-        (one(value), ...);
+        (self().one(value), ...);
+    }
+
+protected:
+    template<class A, class B>
+    void one(std::pair<A, B>& both)
+    {
+        self().one(both.first);
+        self().one(both.second);
     }
 
 private:
+    Self& self() { return static_cast<Self&>(*this); }
+};
+
+/// Appends to `bytes`.
+class packer : public both_ways<packer> {
+public:
+    std::string bytes;
+
+private:
+    friend both_ways;
+    using both_ways::one;
     template<class T>
     void one(T& value)
     {
@@ -46,12 +64,6 @@ private:
         for (T& item : list) {
             one(item);
         }
-    }
-    template<class A, class B>
-    void one(std::pair<A, B>& both)
-    {
-        one(both.first);
-        one(both.second);
     }
     template<class K, class T>
     void one(std::map<K, T>& all)
@@ -80,18 +92,15 @@ private:
 };
 
 /// Takes from the front of `bytes`, which a packer of the same build wrote.
-class unpacker {
+class unpacker : public both_ways<unpacker> {
 public:
     explicit unpacker(std::string_view bytes) : bytes_(bytes) {}
 
-    template<class... T>
-    void operator()(T&... value)
-    {
-        (one(value), ...);
-    }
     bool finished() const { return bytes_.empty(); }
 
 private:
+    friend both_ways;
+    using both_ways::one;
     template<class T>
     void one(T& value)
     {
@@ -115,12 +124,6 @@ private:
         for (T& item : list) {
             one(item);
         }
-    }
-    template<class A, class B>
-    void one(std::pair<A, B>& both)
-    {
-        one(both.first);
-        one(both.second);
     }
     template<class K, class T>
     void one(std::map<K, T>& all)

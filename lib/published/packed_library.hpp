@@ -59,7 +59,8 @@ void fields(A& a, table& t)
 template<class A>
 void fields(A& a, field_spec& f)
 {
-    a(f.name, f.holds, f.dim, f.meaning, f.varies, f.positive, f.choices, f.from_table, f.by, f.column, f.limit_is_low, f.bounds, f.per, f.at);
+    a(f.name, f.holds, f.dim, f.meaning, f.varies, f.positive, f.choices, f.from_table, f.by, f.column, f.limit_is_low, f.bounds, f.not_with,
+      f.instead, f.per, f.at);
 }
 
 template<class A>

@@ -249,12 +249,6 @@ finding judge_one(const rule& r, const library& lib, const subject& about, state
 
 namespace {
 
-bool in_force(const rule& r, const judging_options& options)
-{
-    return r.shown.limit_set == "practice" ||
-           std::find(options.limit_sets.begin(), options.limit_sets.end(), r.shown.limit_set) != options.limit_sets.end();
-}
-
 bool graver(const finding& a, const finding& b)
 {
     if (a.judged != b.judged) {
@@ -337,6 +331,11 @@ void find_loosened(const rule_set& rules, std::vector<finding>& findings, std::v
 
 } // namespace
 
+bool in_force(const rule& r, const std::vector<std::string>& limit_sets)
+{
+    return r.shown.limit_set == "practice" || std::find(limit_sets.begin(), limit_sets.end(), r.shown.limit_set) != limit_sets.end();
+}
+
 judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts,
                 const judging_options& options, const std::string& changed, const std::string& change_kind)
 {
@@ -357,7 +356,7 @@ judgement judge(const rule_set& rules, const library& lib, const std::vector<sub
         }
     }
     for (const rule& r : rules.rules) {
-        if (!in_force(r, options) || std::find(r.changes.begin(), r.changes.end(), change_kind) == r.changes.end()) {
+        if (!in_force(r, options.limit_sets) || std::find(r.changes.begin(), r.changes.end(), change_kind) == r.changes.end()) {
             continue;
         }
         std::vector<finding> some;

@@ -51,6 +51,9 @@ std::map<std::string, std::string> classes_of(const rule_set& set, const library
 finding judge_one(const rule& r, const library& lib, const subject& about, state in, const fact_source& facts,
                   const std::map<std::string, std::string>& classes);
 
+/// Of a set that is used, or of none: practice is always in force.
+bool in_force(const rule& r, const std::vector<std::string>& limit_sets);
+
 /// One rule's or class's own examples.
 std::vector<example_result> run_examples_of(const rule& r, const library& lib);
 std::vector<example_result> run_examples_of(const compiled_class& c, const library& lib);

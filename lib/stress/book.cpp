@@ -1,4 +1,5 @@
 // The look-ups of solved_supply: a fact by subject, state and name.
+#include "stress/items.hpp"
 #include "stress/part_facts.hpp"
 #include "stress/solved.hpp"
 
@@ -7,18 +8,6 @@
 namespace onehand {
 
 namespace {
-
-value no_fact(const subject& s, const std::string& name)
-{
-    return missing_value(value::type::number, {s.name + "." + name});
-}
-
-template<class Item>
-const Item* item_of(const std::vector<Item>& list, const subject& s)
-{
-    const auto it = std::find_if(list.begin(), list.end(), [&](const Item& i) { return i.about == s; });
-    return it == list.end() ? nullptr : &*it;
-}
 
 /// The largest of a signed value's negatives: how far it goes below zero, told as a positive number.
 value below_zero(value v)
@@ -81,7 +70,8 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
         return source_current(*this);
     }
     if (name == "indicates") {
-        return truth_of(p->role == "indicator");
+        // Whoever sees a lamp reads it: only a written role says that it is there for something else.
+        return p->role.empty() ? missing_value(value::type::truth, {p->ref + ".role"}) : truth_of(p->role == "indicator");
     }
     if (p->kind == "capacitor") {
         if (const auto v = capacitor_fact(*this, *p, name)) {

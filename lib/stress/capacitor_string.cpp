@@ -21,9 +21,7 @@ public:
             const auto ohms = e.values.find(form::resistance);
             const bool small =
                 e.wiper.empty() && ohms != e.values.end() && !ohms->second.numbers.empty() && ohms->second.numbers.front().whole.high <= damping;
-            const bool closed =
-                surely_conducts(e) && std::all_of(e.forms.begin(), e.forms.end(), [](form f) { return f == form::closed || f == form::inductance; });
-            if ((small || closed) && root(e.from) != root(e.to)) {
+            if ((small || joins_nets(e)) && root(e.from) != root(e.to)) {
                 parent_[root(e.from)] = root(e.to);
             }
         }

@@ -35,10 +35,8 @@ void add_parts(std::vector<fact_spec>& list)
     list.push_back(told("part", "ambient", dim::temperature, "air around the part: ambient and the rise inside"));
     list.push_back(solved("part", "insulation-voltage", dim::voltage, "greatest between any two of its nets, or of one against the return"));
     list.push_back(told("fuse", "source-current", dim::current, "what the input can deliver for long, as written"));
-    list.push_back(truth("lamp", "indicates", "its role is to indicate"));
-    list.push_back(truth("led", "indicates", "its role is to indicate"));
+    list.push_back(truth("lamp", "indicates", "its role is to indicate; unknown without a role"));
     list.push_back(truth("capacitor", "class-2", "its dielectric is a class 2 ceramic"));
-    list.push_back(truth("capacitor", "suppression-class", "it is sold by a class X or Y"));
     list.push_back(truth("capacitor", "bridges-touchable", "it joins something that can be touched, not bonded to the return, to another net"));
     list.push_back(told("capacitor", "leakage-drop", dim::voltage, "greatest leakage times the resistance that feeds it"));
     list.push_back(truth("capacitor", "in-series", "it shares a voltage with other capacitors in a string"));

@@ -228,6 +228,18 @@ struct decay_network::inside {
         const auto it = node.find(root(net_name));
         return it == node.end() ? -1 : it->second;
     }
+
+    /// What is not known of a capacitor on either net is not known of the figure.
+    void note_unknown(value& v, const std::string& a, const std::string& b) const
+    {
+        for (const std::string& end : {a, b}) {
+            if (const auto it = unknown.find(root(end)); it != unknown.end()) {
+                value other;
+                other.missing = it->second;
+                inherit(v, other);
+            }
+        }
+    }
 };
 
 namespace {
@@ -247,7 +259,7 @@ void join_nets(const supply& s, const std::vector<element>& off, const off_case&
         }
     };
     for (const element& e : off) {
-        const bool closed = std::all_of(e.forms.begin(), e.forms.end(), [](form f) { return f == form::closed || f == form::inductance; });
+        const bool closed = joins_nets(e);
         const part* p = s.find_part(e.ref);
         const bool unplugged = how.output_unplugged && p != nullptr && p->kind == "connector";
         if (closed && !unplugged && e.ref != how.broken) {
@@ -354,13 +366,7 @@ value decay_network::time_to(const std::string& a, const std::string& b, double 
     } else if (volts < inside_->input_volts) {
         v.missing.push_back("the time to " + fmt::format("{}", volts) + " V: the input side can hold the rail at its own voltage");
     }
-    for (const std::string& net : {a, b}) {
-        if (const auto it = inside_->unknown.find(inside_->root(net)); it != inside_->unknown.end() && net != "") {
-            value other;
-            other.missing = it->second;
-            inherit(v, other);
-        }
-    }
+    inside_->note_unknown(v, a, b);
     return v;
 }
 
@@ -386,13 +392,7 @@ value decay_network::left_after(const std::string& a, const std::string& b, doub
         s.in_use.high = std::max(s.in_use.high, rail ? inside_->input_volts : 0.0);
         s.whole.high = std::max(s.whole.high, s.in_use.high);
     }
-    for (const std::string& net : {a, b}) {
-        if (const auto it = inside_->unknown.find(inside_->root(net)); it != inside_->unknown.end()) {
-            value other;
-            other.missing = it->second;
-            inherit(v, other);
-        }
-    }
+    inside_->note_unknown(v, a, b);
     return v;
 }
 
@@ -416,14 +416,8 @@ decay_network::touch decay_network::touched(const std::string& a, const std::str
         out.above =
             from_figure(circuit::last_time_above(with_body, i, j, volts), dim::time, fmt::format("last time above {} V across {} ohm", volts, ohms));
     }
-    for (const std::string& net : {a, b}) {
-        if (const auto it = inside_->unknown.find(inside_->root(net)); it != inside_->unknown.end()) {
-            value other;
-            other.missing = it->second;
-            inherit(out.peak, other);
-            inherit(out.above, other);
-        }
-    }
+    inside_->note_unknown(out.peak, a, b);
+    inside_->note_unknown(out.above, a, b);
     return out;
 }
 
@@ -440,14 +434,8 @@ decay_network::pulse decay_network::into_body(const std::string& a, const std::s
         out.charge = from_figure(p.charge, dim::charge, fmt::format("integral of current into {} ohm over {} s", ohms, seconds));
         out.energy = from_figure(p.energy, dim::energy, fmt::format("integral of power into {} ohm over {} s", ohms, seconds));
     }
-    for (const std::string& net : {a, b}) {
-        if (const auto it = inside_->unknown.find(inside_->root(net)); it != inside_->unknown.end()) {
-            value other;
-            other.missing = it->second;
-            inherit(out.charge, other);
-            inherit(out.energy, other);
-        }
-    }
+    inside_->note_unknown(out.charge, a, b);
+    inside_->note_unknown(out.energy, a, b);
     return out;
 }
 

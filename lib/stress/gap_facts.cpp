@@ -1,4 +1,5 @@
 // Facts of written gaps and of pairs of nets.
+#include "stress/items.hpp"
 #include "stress/solved.hpp"
 #include "stress/spread_math.hpp"
 
@@ -7,18 +8,6 @@
 namespace onehand {
 
 namespace {
-
-template<class Item>
-const Item* item_of(const std::vector<Item>& list, const subject& s)
-{
-    const auto it = std::find_if(list.begin(), list.end(), [&](const Item& i) { return i.about == s; });
-    return it == list.end() ? nullptr : &*it;
-}
-
-value no_fact(const subject& s, const std::string& name)
-{
-    return missing_value(value::type::number, {s.name + "." + name});
-}
 
 /// A figure that a set does not ask at all: nothing, as against unknown.
 value asked(const value& v)

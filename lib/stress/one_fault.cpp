@@ -96,22 +96,20 @@ value input_after_fault(const solved_supply& s)
         return missing_value(value::type::number, {"input and output nets"});
     }
     const std::vector<element> wired = wire(built, s.data(), state::running, {});
-    const std::set<std::string> side = reach(wired, built.fed.nets[0], [&](const element& e) {
-        return surely_conducts(e) &&
-               std::none_of(e.forms.begin(), e.forms.end(), [](element_spec::form f) { return f == element_spec::form::resistance; }) &&
-               e.from != built.return_net && e.to != built.return_net;
-    });
+    const std::set<std::string> side =
+        reach(wired, built.fed.nets[0], [&](const element& e) { return joins_nets(e) && e.from != built.return_net && e.to != built.return_net; });
     value v;
     const value input = magnitude(s.at(state::running).voltage(built.fed.nets[0], built.fed.nets[1]));
     const auto source = highest(input);
     inherit(v, input);
     double charge = 0.0;
     double farads = 0.0;
-    double highest_held = 0.0;
     for (const charged_capacitor& c : s.capacitors()) {
         if (side.contains(c.positive) && c.negative == built.return_net) {
             continue;
         }
+        inherit(v, c.voltage);
+        inherit(v, c.capacitance);
         const auto volts = highest(magnitude(c.voltage));
         const auto size = highest(c.capacitance);
         if (!volts || !size) {
@@ -121,7 +119,6 @@ value input_after_fault(const solved_supply& s)
         if (*volts > source.value_or(0.0)) {
             charge += *size * *volts;
             farads += *size;
-            highest_held = std::max(highest_held, *volts);
         }
     }
     const double own = least_input_capacitance(s, side);

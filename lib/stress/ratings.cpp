@@ -69,8 +69,12 @@ std::optional<value> capacitor_fact(const solved_supply& s, const part& p, const
         return d.empty() ? missing_value(value::type::truth, {p.ref + ".dielectric"})
                          : truth_of(d == "X7R" || d == "X5R" || d == "Y5V" || d == "Z5U");
     }
-    if (name == "suppression-class") {
-        return truth_of(!choice_word(s, p, "safety-class").empty());
+    if (name == "rated-voltage" && p.find("rated-voltage") == nullptr) {
+        // A class X or Y part is sold by its a.c. voltage: the d.c. figure of its maker counts.
+        const kind_spec* kind = s.data().find_kind(p.kind);
+        const bool by_class = !choice_word(s, p, "safety-class").empty();
+        return p.find("rated-voltage-dc") != nullptr || by_class ? field_value(p, *kind, s.data(), "rated-voltage-dc")
+                                                                 : field_value(p, *kind, s.data(), name);
     }
     if (name == "bridges-touchable") {
         return bridges_touchable(s, p);

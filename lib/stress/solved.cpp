@@ -106,10 +106,21 @@ value solved_supply::worst_left_broken(const std::string& a, const std::string& 
         if (qualified != nullptr && qualified->truth() != nullptr && *qualified->truth()) {
             continue;
         }
-        worst = greater(worst, after({false, false, ref}).left_after(a, b, seconds));
+        for (const off_case& how : off_cases_without(ref)) {
+            worst = greater(worst, after(how).left_after(a, b, seconds));
+        }
     }
     worst.shown.formula = "greatest voltage left, each discharge path open in turn";
     return worst;
+}
+
+std::vector<off_case> solved_supply::off_cases_without(const std::string& ref) const
+{
+    std::vector<off_case> cases = off_cases_;
+    for (off_case& how : cases) {
+        how.broken = ref;
+    }
+    return cases;
 }
 
 std::vector<std::string> solved_supply::paths_to_break() const

@@ -92,6 +92,8 @@ public:
     /// The cases that stand for switch-off as built: input open and shorted, output fitted and, where there is a plug, unplugged.
     const std::vector<off_case>& off_cases() const { return off_cases_; }
     const decay_network& after(const off_case& how) const;
+    /// Those cases with one body taken out: a path may be open whatever the ends do.
+    std::vector<off_case> off_cases_without(const std::string& ref) const;
     /// Bodies that discharge something after switch-off: each is a path that may be open.
     std::vector<std::string> paths_to_break() const;
 

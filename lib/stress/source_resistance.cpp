@@ -15,12 +15,6 @@ using form = element_spec::form;
 constexpr double usual_meter = 10e6; // ohm, common practice
 constexpr double least_ohms = 1e-3;  // of what is closed
 
-bool without_resistance(const element& e)
-{
-    const auto joins = [](form f) { return f == form::closed || f == form::inductance; };
-    return surely_conducts(e) && std::all_of(e.forms.begin(), e.forms.end(), joins);
-}
-
 std::vector<element> wired(const solved_supply& s)
 {
     return wire(s.bodies(), s.data(), state::no_load, s.output().stage_parts);
@@ -39,7 +33,7 @@ std::set<std::string> stiff_nets(const solved_supply& s)
     const std::vector<element> all = wired(s);
     std::set<std::string> nets;
     for (const std::string& net : held) {
-        nets.merge(reach(all, net, without_resistance));
+        nets.merge(reach(all, net, joins_nets));
     }
     return nets;
 }
@@ -84,7 +78,7 @@ std::optional<double> source_resistance(const solved_supply& s, const std::strin
             continue;
         }
         const auto v = e.values.find(e.wiper.empty() ? form::resistance : form::track);
-        const bool closed = without_resistance(e);
+        const bool closed = joins_nets(e);
         if (!closed && (v == e.values.end() || v->second.numbers.empty())) {
             continue;
         }

@@ -271,19 +271,16 @@ spacing_need spacing_needed(const value& working_voltage, const spacing_site& si
     return need;
 }
 
-set_need need_of(const spacing_need& need, const std::string& limit_set)
+set_need need_of(const spacing_need& need, const limit_set& set)
 {
-    if (limit_set == "IEC 60664-1") {
-        return {&need.clearance, &need.creepage};
-    }
-    if (limit_set == "IEC 61010-1") {
-        return {&need.lab_clearance, &need.lab_creepage};
-    }
-    if (limit_set == "IEC 62368-1") {
-        return {&need.equipment_clearance, &need.equipment_creepage};
-    }
-    if (limit_set == "IPC-2221") {
-        return {&need.board, &need.board};
+    const std::pair<const char*, set_need> told[] = {{"iec-60664-1", {&need.clearance, &need.creepage}},
+                                                     {"iec-61010-1", {&need.lab_clearance, &need.lab_creepage}},
+                                                     {"iec-62368-1", {&need.equipment_clearance, &need.equipment_creepage}},
+                                                     {"ipc-2221", {&need.board, &need.board}}};
+    for (const auto& [source, figures] : told) {
+        if (std::find(set.sources.begin(), set.sources.end(), source) != set.sources.end()) {
+            return figures;
+        }
     }
     return {};
 }

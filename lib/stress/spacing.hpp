@@ -38,12 +38,12 @@ struct spacing_need {
 };
 spacing_need spacing_needed(const value& working_voltage, const spacing_site& site);
 
-/// Clearance and creepage that a limit set asks; null where the set speaks of no spacing.
+/// Clearance and creepage that a limit set asks, by the sources it cites; null where it speaks of no spacing.
 struct set_need {
     const value* clearance = nullptr;
     const value* creepage = nullptr;
 };
-set_need need_of(const spacing_need& need, const std::string& limit_set);
+set_need need_of(const spacing_need& need, const limit_set& set);
 
 /// The greatest transient the mains can bring, by IEC 60664-1 table F.1 or as declared; 0 V from a battery; several where the category is not said.
 value mains_impulse(const input& fed, const library& lib);

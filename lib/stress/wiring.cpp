@@ -129,6 +129,12 @@ bool may_conduct(const element& e)
     return std::any_of(e.forms.begin(), e.forms.end(), [](form f) { return f != form::open && f != form::capacitance; });
 }
 
+bool joins_nets(const element& e)
+{
+    return std::all_of(e.forms.begin(), e.forms.end(),
+                       [](element_spec::form f) { return f == element_spec::form::closed || f == element_spec::form::inductance; });
+}
+
 bool surely_conducts(const element& e)
 {
     return std::all_of(e.forms.begin(), e.forms.end(),

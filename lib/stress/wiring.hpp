@@ -28,5 +28,7 @@ std::vector<element> wire(const supply& s, const library& lib, state in, const s
 bool may_conduct(const element& e);
 /// True if it conducts in every form.
 bool surely_conducts(const element& e);
+/// True if it makes its two nets one in every form: closed, or a coil, which is closed for direct current.
+bool joins_nets(const element& e);
 
 } // namespace onehand

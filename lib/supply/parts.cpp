@@ -167,6 +167,14 @@ private:
             }
         }
         read_measured();
+        for (const field_spec& f : kind_.fields) {
+            const auto here = part_.fields.find(f.name);
+            const auto there = part_.fields.find(f.not_with);
+            if (!f.not_with.empty() && here != part_.fields.end() && there != part_.fields.end()) {
+                r_.contradict(here->second.at, "'" + f.name + "' says nothing beside '" + f.not_with + "': write '" + f.instead + "'",
+                              there->second.at);
+            }
+        }
     }
 
     std::optional<field> read_one(const entry& e, const field_spec& spec)

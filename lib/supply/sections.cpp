@@ -170,6 +170,12 @@ void read_input(reader& r)
                           {"overvoltage-category", type::choice, {}, {"I", "II", "III", "IV"}},
                           {"transient", type::quantity, dim::voltage, {}}},
                          {"nets"}, "[input]");
+    const auto transient = in.fields.find("transient");
+    const auto feed = in.fields.find("feed");
+    if (transient != in.fields.end() && feed != in.fields.end()) {
+        r.contradict(transient->second.at, "a declared 'transient' stands in place of 'feed' and the mains behind it: write one of them",
+                     feed->second.at);
+    }
     in.voltage = taken(in.fields, "voltage");
     in.isolated = taken(in.fields, "isolated");
     in.current_limit = taken(in.fields, "current-limit");

@@ -220,6 +220,31 @@ TEST_CASE("a discharge resistor is taken as failed unless it passed its tests")
     CHECK(judged(passed, "bleeder-second-path") == verdict::not_applicable);
 }
 
+TEST_CASE("a path open and the plug out at once: what the far side discharges does not count")
+{
+    // Either resistor alone empties the rail within 2 s; the far one goes with its plug, so the near one open leaves the charge on the near side.
+    const auto described = [](const char* near) {
+        return std::string("[supply]\nreturn = \"0V\"\ncomplete = [\"capacitors\", \"sources\", \"access\"]\n[input]\nnets = [\"VIN\", "
+                           "\"0V\"]\nvoltage = \"12 V\"\n"
+                           "[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = \"450 V\"\ninternal-capacitance = "
+                           "\"0 F\"\n[capacitor]\n"
+                           "C1 = { nets = [\"HT\", \"0V\"], value = \"1 uF\" }\n[connector]\nJ1 = { poles = [[\"HT\", \"HL\"]] }\n[resistor]\nR9 = { "
+                           "nets = [\"HL\", \"0V\"], value = "
+                           "\"100k\" }\n") +
+               near + "[[access]]\nnets = [\"HT\", \"0V\"]\nwhen = \"plug withdrawn\"\n";
+    };
+    const std::string one = "R1 = { nets = [\"HT\", \"0V\"], value = \"100k\" }\n";
+    const audit_result single = *run(described(one.c_str())).result;
+    CHECK(judged(single, "unplugged-2-s") == verdict::pass);
+    CHECK(judged(single, "unplugged-faulted") == verdict::fail);
+    CHECK(found(single, "unplugged-faulted", "HT to 0V")->left->numbers.front().whole.high > 440.0);
+    REQUIRE(single.label);
+    CHECK(single.label->wait.never);
+    const audit_result two = *run(described((one + "R2 = { nets = [\"HT\", \"0V\"], value = \"100k\" }\n").c_str())).result;
+    CHECK(judged(two, "unplugged-faulted") == verdict::pass);
+    CHECK_FALSE(two.label->wait.never);
+}
+
 TEST_CASE("laboratory thresholds of stored energy, derived capacitances, and what they demand")
 {
     struct row {

@@ -448,12 +448,14 @@ TEST_CASE("a shorted rectifier empties the output into the input: three networks
 TEST_CASE("class X and Y capacitors: no d.c. rating by class, and the right class towards a person")
 {
     const auto with = [](const std::string& fields) {
-        return rail(400, "[capacitor]\nC1 = { nets = [\"HT\", \"T\"], value = \"1 nF\", rated-voltage = \"630 V\"" + fields + " }\n", "",
+        return rail(400, "[capacitor]\nC1 = { nets = [\"HT\", \"T\"], value = \"1 nF\", dielectric = \"polypropylene\"" + fields + " }\n", "",
                     "[[access]]\nnets = [\"T\", \"0V\"]\nwhen = \"always\"\n");
     };
-    CHECK(judged(with(", safety-class = \"X2\""), "suppression-capacitor-dc", "C1") == verdict::not_shown);
-    CHECK(judged(with(", safety-class = \"X2\", rated-voltage-dc = \"760 V\""), "suppression-capacitor-dc", "C1") == verdict::pass);
-    CHECK(judged(with(""), "suppression-capacitor-dc", "C1") == verdict::not_applicable);
+    CHECK(judged(with(", safety-class = \"X2\""), "capacitor-voltage", "C1") == verdict::not_shown); // sold by its a.c. voltage
+    CHECK(found(with(", safety-class = \"X2\""), "capacitor-voltage", "C1")->missing == std::vector<std::string>{"C1.rated-voltage-dc"});
+    CHECK(judged(with(", safety-class = \"X2\", rated-voltage-dc = \"760 V\""), "capacitor-voltage", "C1") == verdict::pass);
+    CHECK(judged(with(", safety-class = \"X2\", rated-voltage-dc = \"390 V\""), "capacitor-voltage", "C1") == verdict::fail);
+    CHECK(judged(with(", rated-voltage = \"630 V\""), "capacitor-voltage", "C1") == verdict::pass);
     CHECK(judged(with(", safety-class = \"Y1\""), "bridging-capacitor", "C1") == verdict::pass);
     CHECK(judged(with(", safety-class = \"Y2\""), "bridging-capacitor", "C1") == verdict::fail);
     CHECK(judged(with(""), "bridging-capacitor", "C1") == verdict::not_shown);

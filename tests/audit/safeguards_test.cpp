@@ -81,7 +81,7 @@ TEST_CASE("each part on the way shorted and opened: the same as editing the desc
         REQUIRE(f->left);
         CHECK(f->left->numbers.front().whole.high == doctest::Approx(worst).epsilon(1e-6).scale(0));
         CHECK(found(*whole.result, "access-live-faulted", "M to 0V")->judged == n.due);
-        CHECK(found(*run(socket(written(n.parts), "instructed")).result, "access-class-faulted-instructed", "M to 0V")->judged == n.due);
+        CHECK(found(*run(socket(written(n.parts), "instructed")).result, "access-class-faulted", "M to 0V")->judged == n.due);
     }
 }
 

@@ -12,7 +12,6 @@
 #include <filesystem>
 #include <fstream>
 #include <nlohmann/json.hpp>
-#include <regex>
 #include <set>
 #include <sstream>
 
@@ -128,7 +127,7 @@ TEST_CASE("the text keeps to 80 columns and to its own first screen")
         CHECK(energise);
         CHECK(reach_in);
         CHECK(text.find("Local codes and licensed practice") != std::string::npos);
-        CHECK_FALSE(std::regex_search(text, std::regex("\\bsafe\\b"))); // a safeguard is a thing, "safe" would be a verdict
+        CHECK(text.find(" safe") == std::string::npos);
     }
 }
 

@@ -99,6 +99,8 @@ const added additions[] = {
     {"[[gap]]\nnets = [\"HT\", \"HT\"]\nclearance = \"2.4 mm\"", "13:8: both ends are the same net, 'HT'"},
     {"[[gap]]\nnets = [\"HT\", \"0V\"]\nsurface = \"FR4\"", "14:11: 'FR4' is no surface; nearest known name: FR-4"},
     {"[[gap]]\nnets = [\"HT\", \"0V\"]\ninsulation = \"double\"", "14:14: 'double' is no insulation: functional, basic, supplementary, reinforced"},
+    {"[capacitor]\nC9 = { nets = [\"HT\", \"0V\"], value = \"1 nF\", rated-voltage = \"275 V\", safety-class = \"X2\" }",
+     "13:61: 'rated-voltage' says nothing beside 'safety-class': write 'rated-voltage-dc' [also 13:85]"},
     {"[[gap]]\nnets = [\"HT\", \"0V\"]\ngroove = \"1 mm\"",
      "14:10: a groove is written with its width 'groove' and the path along it 'groove-creepage'"},
     {"[[gap]]\nnets = [\"HT\", \"0V\"]\ncoating = \"varnish\"", "14:11: 'varnish' is no coating: none, solder mask, lacquer, qualified"},
