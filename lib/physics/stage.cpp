@@ -1,0 +1,287 @@
+#include "physics/stage.hpp"
+
+namespace onehand::physics {
+
+namespace {
+
+constexpr double least_reset = 1e-3; // volt
+
+double shrunk(double x)
+{
+    return x < 1e-9 ? 1.0 - 0.5 * x : -std::expm1(-x) / x;
+}
+/// (1 - e^-x)/x, falling.
+double loss_share(double x)
+{
+    return shrunk(x);
+}
+interval loss_share(const interval& x)
+{
+    const double top = std::max(x.upper(), 0.0);
+    return {std::isfinite(top) ? shrunk(top) : 0.0, shrunk(std::max(x.lower(), 0.0))};
+}
+
+template<class N>
+N half()
+{
+    return N(0.5);
+}
+
+} // namespace
+
+template<class N>
+volts<N> reset_voltage(const stage<N>& s)
+{
+    const volts<N> v = s.is == shape::boost ? s.out + s.drop - s.in : (s.out + s.drop) / s.turns;
+    return volts<N>::from_value(at_least(v.value(), least_reset));
+}
+
+template<class N>
+amperes<N> full_peak(const stage<N>& s)
+{
+    if (s.limited) {
+        return s.limit + s.in * s.delay / s.inductance;
+    }
+    return s.in * s.on / s.inductance;
+}
+
+template<class N>
+amperes<N> full_peak_lossy(const stage<N>& s)
+{
+    if (s.limited) {
+        return s.limit;
+    }
+    const N x = ((s.coil + s.on_resistance) * s.on / s.inductance).value();
+    return s.in * s.on / s.inductance * loss_share(x);
+}
+
+template<class N>
+seconds<N> emptying_time(const stage<N>& s, const amperes<N>& peak)
+{
+    return s.inductance * peak / reset_voltage(s);
+}
+
+template<class N>
+N slack(const stage<N>& s)
+{
+    const amperes<N> i = full_peak(s);
+    const seconds<N> on = s.limited ? s.inductance * i / s.in : s.on;
+    return N(1.0) - (on / s.period).value() - (emptying_time(s, i) / s.period).value();
+}
+
+template<class N>
+N continuity(const stage<N>& s)
+{
+    const volts<N> reset = reset_voltage(s);
+    const N off = N(1.0) / (N(1.0) + (reset / s.in).value());
+    const N k = (s.inductance * s.load * N(2.0) / (s.out * s.period)).value() * squared(s.turns);
+    const N critical = s.is == shape::boost ? (N(1.0) - off) * squared(off) : squared(off);
+    return k - critical;
+}
+
+template<class N>
+N off_share(const stage<N>& s)
+{
+    const volts<N> a = s.in + reset_voltage(s);
+    const ohms<N> along = s.is == shape::boost ? s.on_resistance : (s.coil + s.on_resistance) * s.turns;
+    const ohms<N> both = (s.coil + s.on_resistance) * s.turns;
+    const volts<N> b = s.in + s.load * along;
+    const N beneath = (b * b - N(4.0) * (a * (s.load * both))).value();
+    return ((b + volts<N>::from_value(root(beneath))) / (a * N(2.0))).value();
+}
+
+template<class N>
+amperes<N> regulated_average(const stage<N>& s)
+{
+    return decided(
+        continuity(s),
+        [&] { return s.load * s.turns / off_share(s); },
+        [&] {
+            // Triangles: each empties before the next begins.
+            const amperes<N> i = regulated_peak(s);
+            const seconds<N> rising = s.inductance * i / s.in;
+            return i * ((rising + emptying_time(s, i)) / s.period).value() * half<N>();
+        });
+}
+
+template<class N>
+amperes<N> regulated_ripple(const stage<N>& s)
+{
+    return decided(
+        continuity(s),
+        [&] { return s.in * (s.period * (N(1.0) - off_share(s))) / s.inductance; },
+        [&] { return regulated_peak(s); });
+}
+
+template<class N>
+amperes<N> regulated_peak(const stage<N>& s)
+{
+    return decided(
+        continuity(s),
+        [&] {
+            const N off = off_share(s);
+            return s.load * s.turns / off + s.in * (s.period * (N(1.0) - off)) / s.inductance * half<N>();
+        },
+        [&] {
+            const N square = (s.load * s.turns * N(2.0) * reset_voltage(s) * s.period / s.inductance).value();
+            return amperes<N>::from_value(root(square));
+        });
+}
+
+template<class N>
+coulombs<N> packet(const stage<N>& s, const amperes<N>& peak)
+{
+    return peak * emptying_time(s, peak) / s.turns * half<N>();
+}
+
+template<class N>
+amperes<N> most_load(const stage<N>& s)
+{
+    return decided(
+        slack(s), [&] { return packet(s, full_peak_lossy(s)) / s.period; },
+        [&] {
+            if (s.limited) {
+                const N share = N(1.0) / (N(1.0) + (reset_voltage(s) / s.in).value());
+                const amperes<N> swing = s.in * (s.period * (N(1.0) - share)) / s.inductance;
+                return amperes<N>::from_value(at_least((s.limit - swing * half<N>()).value(), 0.0)) * share / s.turns;
+            }
+            const N off = N(1.0) - (s.on / s.period).value();
+            const ohms<N> r = s.is == shape::boost ? s.coil + s.on_resistance * (N(1.0) - off) : (s.coil + s.on_resistance) * s.turns * (N(1.0) - off);
+            const volts<N> left = s.is == shape::boost ? s.in - (s.out + s.drop) * off : s.in * (N(1.0) - off) - reset_voltage(s) * off;
+            const volts<N> usable = volts<N>::from_value(at_least(left.value(), 0.0));
+            return usable * off / r;
+        });
+}
+
+template<class N>
+effective<N> effective_full(const stage<N>& s)
+{
+    const amperes<N> i = full_peak(s);
+    const N on = s.limited ? (s.inductance * i / s.in / s.period).value() : (s.on / s.period).value();
+    const N off = (emptying_time(s, i) / s.period).value();
+    return {i * root((on + off) / N(3.0)), i * root(on / N(3.0)), i / s.turns * root(off / N(3.0))};
+}
+
+template<class N>
+effective<N> effective_regulated(const stage<N>& s)
+{
+    const auto triangles = [&] {
+        const amperes<N> i = regulated_peak(s);
+        const N on = (s.inductance * i / s.in / s.period).value();
+        const N off = (emptying_time(s, i) / s.period).value();
+        return effective<N>{i * root((on + off) / N(3.0)), i * root(on / N(3.0)), i / s.turns * root(off / N(3.0))};
+    };
+    const auto trapezes = [&] {
+        const N off = off_share(s);
+        const amperes<N> mean = s.load * s.turns / off;
+        const amperes<N> swing = s.in * (s.period * (N(1.0) - off)) / s.inductance;
+        const amperes<N> all = amperes<N>::from_value(root(squared(mean.value()) + squared(swing.value()) / N(12.0)));
+        return effective<N>{all, all * root(N(1.0) - off), all / s.turns * root(off)};
+    };
+    const N test = continuity(s);
+    if (least(test) >= 0.0) {
+        return trapezes();
+    }
+    const effective<N> a = triangles();
+    if (most(test) < 0.0) {
+        return a;
+    }
+    const effective<N> b = trapezes();
+    const auto both = [](const amperes<N>& x, const amperes<N>& y) { return amperes<N>::from_value(joined(x.value(), y.value())); };
+    return {both(a.coil, b.coil), both(a.power_switch, b.power_switch), both(a.rectifier, b.rectifier)};
+}
+
+template<class N>
+volts<N> output_ripple(const stage<N>& s, const amperes<N>& peak, const farads<N>& c)
+{
+    return decided(
+        continuity(s), [&] { return s.load * (s.period * (N(1.0) - off_share(s))) / c; },
+        [&] {
+            const amperes<N> above = amperes<N>::from_value(at_least((peak / s.turns - s.load).value(), 0.0));
+            return above * above * s.inductance * s.turns / (reset_voltage(s) * c) * half<N>();
+        });
+}
+
+template<class N>
+volts<N> open_loop(const stage<N>& s, const ohms<N>& load)
+{
+    const amperes<N> i = full_peak(s);
+    const watts<N> stored = stored_power(s.inductance, i, s.period);
+    const N square = (stored * load).value();
+    const N duty = (s.on / s.period).value();
+    if (s.is == shape::flyback) {
+        const volts<N> balance = volts<N>::from_value(root(square));
+        const volts<N> continuous = s.in * (s.turns * duty / (N(1.0) - duty));
+        return s.limited ? balance : volts<N>::from_value(greater_of(balance.value(), continuous.value()));
+    }
+    const volts<N> balance = s.in * half<N>() + volts<N>::from_value(root(squared(s.in.value()) * N(0.25) + square));
+    const volts<N> continuous = s.in / (N(1.0) - duty);
+    return s.limited ? balance : volts<N>::from_value(greater_of(balance.value(), continuous.value()));
+}
+
+template<class N>
+volts<N> unloaded_peak(const volts<N>& in, const amperes<N>& peak, const henries<N>& l, const farads<N>& c)
+{
+    return in + volts<N>::from_value(root(squared(in.value()) + squared(peak.value()) * (l / c).value()));
+}
+
+template<class N>
+volts<N> leakage_spike(const amperes<N>& peak, const henries<N>& leakage, const farads<N>& c)
+{
+    return peak * ohms<N>::from_value(root((leakage / c).value()));
+}
+
+template<class N>
+volts<N> clamp_voltage(const volts<N>& reflected, const henries<N>& leakage, const amperes<N>& peak, const seconds<N>& period, const ohms<N>& r)
+{
+    const N power = (stored_power(leakage, peak, period) * r).value();
+    return (reflected + volts<N>::from_value(root(squared(reflected.value()) + N(4.0) * power))) * half<N>();
+}
+
+template<class N>
+watts<N> clamp_power(const volts<N>& reflected, const henries<N>& leakage, const amperes<N>& peak, const seconds<N>& period, const volts<N>& clamp)
+{
+    // Vc/(Vc - VR) with each voltage once.
+    return stored_power(leakage, peak, period) / (N(1.0) - (reflected / clamp).value());
+}
+
+template<class N>
+joules<N> avalanche_energy(const henries<N>& l, const amperes<N>& peak, const volts<N>& breakdown, const volts<N>& in)
+{
+    return peak * peak * l * half<N>() / (N(1.0) - (in / breakdown).value());
+}
+
+template<class N>
+watts<N> stored_power(const henries<N>& l, const amperes<N>& peak, const seconds<N>& period)
+{
+    return peak * peak * l / period * half<N>();
+}
+
+#define ONEHAND_STAGE_FORMS(N)                                                                                                                       \
+    template volts<N> reset_voltage(const stage<N>&);                                                                                                \
+    template amperes<N> full_peak(const stage<N>&);                                                                                                  \
+    template amperes<N> full_peak_lossy(const stage<N>&);                                                                                            \
+    template seconds<N> emptying_time(const stage<N>&, const amperes<N>&);                                                                           \
+    template N slack(const stage<N>&);                                                                                                               \
+    template N continuity(const stage<N>&);                                                                                                          \
+    template N off_share(const stage<N>&);                                                                                                           \
+    template amperes<N> regulated_average(const stage<N>&);                                                                                          \
+    template amperes<N> regulated_peak(const stage<N>&);                                                                                             \
+    template amperes<N> regulated_ripple(const stage<N>&);                                                                                           \
+    template coulombs<N> packet(const stage<N>&, const amperes<N>&);                                                                                 \
+    template amperes<N> most_load(const stage<N>&);                                                                                                  \
+    template effective<N> effective_full(const stage<N>&);                                                                                           \
+    template effective<N> effective_regulated(const stage<N>&);                                                                                      \
+    template volts<N> output_ripple(const stage<N>&, const amperes<N>&, const farads<N>&);                                                           \
+    template volts<N> open_loop(const stage<N>&, const ohms<N>&);                                                                                    \
+    template volts<N> unloaded_peak(const volts<N>&, const amperes<N>&, const henries<N>&, const farads<N>&);                                        \
+    template volts<N> leakage_spike(const amperes<N>&, const henries<N>&, const farads<N>&);                                                         \
+    template volts<N> clamp_voltage(const volts<N>&, const henries<N>&, const amperes<N>&, const seconds<N>&, const ohms<N>&);                       \
+    template watts<N> clamp_power(const volts<N>&, const henries<N>&, const amperes<N>&, const seconds<N>&, const volts<N>&);                        \
+    template joules<N> avalanche_energy(const henries<N>&, const amperes<N>&, const volts<N>&, const volts<N>&);                                     \
+    template watts<N> stored_power(const henries<N>&, const amperes<N>&, const seconds<N>&);
+
+ONEHAND_STAGE_FORMS(double)
+ONEHAND_STAGE_FORMS(interval)
+
+} // namespace onehand::physics
