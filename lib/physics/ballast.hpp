@@ -10,9 +10,9 @@ ohm ballast_resistance(volt source, volt held, ampere shunt, ampere load);
 
 struct shunt_state {
     bool regulating = false;
-    volt across;      // the load
-    ampere series;    // through the series resistance
-    ampere shunt;     // through the tube or zener
+    volt across;   // the load
+    ampere series; // through the series resistance
+    ampere shunt;  // through the tube or zener
     ampere load;
     watt in_series, in_shunt;
 };

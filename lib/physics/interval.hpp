@@ -11,8 +11,9 @@
 namespace onehand::physics {
 
 namespace interval_parts = boost::numeric::interval_lib;
-using interval = boost::numeric::interval<
-    double, interval_parts::policies<interval_parts::save_state_nothing<interval_parts::rounded_transc_exact<double>>, interval_parts::checking_base<double>>>;
+using interval =
+    boost::numeric::interval<double, interval_parts::policies<interval_parts::save_state_nothing<interval_parts::rounded_transc_exact<double>>,
+                                                              interval_parts::checking_base<double>>>;
 
 template<class N>
 using volts = boost::units::quantity<boost::units::si::electric_potential, N>;

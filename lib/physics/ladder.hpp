@@ -1,7 +1,7 @@
 #pragma once
-// Diode-capacitor ladders under load. Convention: the drop is that of the output's peak; half the peak-to-peak ripple more gives the drop of its mean.
-// For n stages of equal capacitors the sums below are I/(f C)(2n^3/3 + n^2/2 - n/6) and I/(f C) n(n+1)/2 (Naidu and Kamaraju, chapter 6); with unequal
-// ones they are derived from the charge that passes each capacitor, and give Khalifa's figures for a doubler (example 16.1).
+// Diode-capacitor ladders under load. Convention: the drop is that of the output's peak; half the peak-to-peak ripple more gives the drop of its
+// mean. For n stages of equal capacitors the sums below are I/(f C)(2n^3/3 + n^2/2 - n/6) and I/(f C) n(n+1)/2 (Naidu and Kamaraju, chapter 6); with
+// unequal ones they are derived from the charge that passes each capacitor, and give Khalifa's figures for a doubler (example 16.1).
 #include "quantity/bridge.hpp"
 
 #include <vector>

@@ -27,6 +27,18 @@ N half()
     return N(0.5);
 }
 
+template<class N>
+N kept_by_losses(const stage<N>& s)
+{
+    return loss_share(((s.coil + s.on_resistance) * s.on / s.inductance).value());
+}
+
+template<class N>
+N on_share(const stage<N>& s)
+{
+    return s.limited ? (full_flux(s) / s.in / s.period).value() : s.duty;
+}
+
 } // namespace
 
 template<class N>
@@ -39,34 +51,57 @@ volts<N> reset_voltage(const stage<N>& s)
 template<class N>
 amperes<N> full_peak(const stage<N>& s)
 {
-    if (s.limited) {
-        return s.limit + s.in * s.delay / s.inductance;
-    }
-    return s.in * s.on / s.inductance;
+    return s.limited ? s.limit + s.in * s.delay / s.inductance : s.in * s.on / s.inductance;
 }
 
 template<class N>
 amperes<N> full_peak_lossy(const stage<N>& s)
 {
-    if (s.limited) {
-        return s.limit;
-    }
-    const N x = ((s.coil + s.on_resistance) * s.on / s.inductance).value();
-    return s.in * s.on / s.inductance * loss_share(x);
+    return s.limited ? s.limit : full_peak(s) * kept_by_losses(s);
 }
 
 template<class N>
-seconds<N> emptying_time(const stage<N>& s, const amperes<N>& peak)
+webers<N> full_flux(const stage<N>& s)
 {
-    return s.inductance * peak / reset_voltage(s);
+    return s.limited ? s.limit * s.inductance + s.in * s.delay : webers<N>(s.in * s.on);
+}
+
+template<class N>
+seconds<N> emptying_time(const stage<N>& s)
+{
+    if (s.limited) {
+        return full_flux(s) / reset_voltage(s);
+    }
+    return s.on * (s.in / reset_voltage(s)).value();
+}
+
+template<class N>
+joules<N> full_energy(const stage<N>& s)
+{
+    if (s.limited) {
+        return full_flux(s) * full_peak(s) * half<N>();
+    }
+    const webers<N> flux = s.in * s.on;
+    return flux * flux / s.inductance * half<N>();
+}
+
+template<class N>
+watts<N> full_power(const stage<N>& s)
+{
+    if (s.limited) {
+        return full_energy(s) / s.period;
+    }
+    return s.in * s.in * s.on * s.duty / s.inductance * half<N>();
 }
 
 template<class N>
 N slack(const stage<N>& s)
 {
-    const amperes<N> i = full_peak(s);
-    const seconds<N> on = s.limited ? s.inductance * i / s.in : s.on;
-    return N(1.0) - (on / s.period).value() - (emptying_time(s, i) / s.period).value();
+    if (s.limited) {
+        const seconds<N> on = full_flux(s) / s.in;
+        return N(1.0) - (on / s.period).value() - (emptying_time(s) / s.period).value();
+    }
+    return N(1.0) - s.duty * (N(1.0) + (s.in / reset_voltage(s)).value());
 }
 
 template<class N>
@@ -94,13 +129,13 @@ template<class N>
 amperes<N> regulated_average(const stage<N>& s)
 {
     return decided(
-        continuity(s),
-        [&] { return s.load * s.turns / off_share(s); },
+        continuity(s), [&] { return s.load * s.turns / off_share(s); },
         [&] {
             // Triangles: each empties before the next begins.
             const amperes<N> i = regulated_peak(s);
             const seconds<N> rising = s.inductance * i / s.in;
-            return i * ((rising + emptying_time(s, i)) / s.period).value() * half<N>();
+            const seconds<N> falling = s.inductance * i / reset_voltage(s);
+            return i * ((rising + falling) / s.period).value() * half<N>();
         });
 }
 
@@ -108,9 +143,7 @@ template<class N>
 amperes<N> regulated_ripple(const stage<N>& s)
 {
     return decided(
-        continuity(s),
-        [&] { return s.in * (s.period * (N(1.0) - off_share(s))) / s.inductance; },
-        [&] { return regulated_peak(s); });
+        continuity(s), [&] { return s.in * (s.period * (N(1.0) - off_share(s))) / s.inductance; }, [&] { return regulated_peak(s); });
 }
 
 template<class N>
@@ -129,24 +162,42 @@ amperes<N> regulated_peak(const stage<N>& s)
 }
 
 template<class N>
-coulombs<N> packet(const stage<N>& s, const amperes<N>& peak)
+coulombs<N> packet(const stage<N>& s)
 {
-    return peak * emptying_time(s, peak) / s.turns * half<N>();
+    return full_energy(s) / (reset_voltage(s) * s.turns);
 }
+
+template<class N>
+amperes<N> full_current(const stage<N>& s)
+{
+    return full_power(s) / (reset_voltage(s) * s.turns);
+}
+
+namespace {
+
+/// Of a limited stage without the comparator's delay.
+template<class N>
+amperes<N> least_current(const stage<N>& s)
+{
+    return s.limit * s.limit * s.inductance / (s.period * reset_voltage(s) * s.turns) * half<N>();
+}
+
+} // namespace
 
 template<class N>
 amperes<N> most_load(const stage<N>& s)
 {
     return decided(
-        slack(s), [&] { return packet(s, full_peak_lossy(s)) / s.period; },
+        slack(s), [&] { return s.limited ? least_current(s) : full_current(s) * squared(kept_by_losses(s)); },
         [&] {
             if (s.limited) {
                 const N share = N(1.0) / (N(1.0) + (reset_voltage(s) / s.in).value());
                 const amperes<N> swing = s.in * (s.period * (N(1.0) - share)) / s.inductance;
                 return amperes<N>::from_value(at_least((s.limit - swing * half<N>()).value(), 0.0)) * share / s.turns;
             }
-            const N off = N(1.0) - (s.on / s.period).value();
-            const ohms<N> r = s.is == shape::boost ? s.coil + s.on_resistance * (N(1.0) - off) : (s.coil + s.on_resistance) * s.turns * (N(1.0) - off);
+            const N off = N(1.0) - s.duty;
+            const ohms<N> r =
+                s.is == shape::boost ? s.coil + s.on_resistance * (N(1.0) - off) : (s.coil + s.on_resistance) * s.turns * (N(1.0) - off);
             const volts<N> left = s.is == shape::boost ? s.in - (s.out + s.drop) * off : s.in * (N(1.0) - off) - reset_voltage(s) * off;
             const volts<N> usable = volts<N>::from_value(at_least(left.value(), 0.0));
             return usable * off / r;
@@ -157,8 +208,8 @@ template<class N>
 effective<N> effective_full(const stage<N>& s)
 {
     const amperes<N> i = full_peak(s);
-    const N on = s.limited ? (s.inductance * i / s.in / s.period).value() : (s.on / s.period).value();
-    const N off = (emptying_time(s, i) / s.period).value();
+    const N on = on_share(s);
+    const N off = on * (s.in / reset_voltage(s)).value();
     return {i * root((on + off) / N(3.0)), i * root(on / N(3.0)), i / s.turns * root(off / N(3.0))};
 }
 
@@ -168,7 +219,7 @@ effective<N> effective_regulated(const stage<N>& s)
     const auto triangles = [&] {
         const amperes<N> i = regulated_peak(s);
         const N on = (s.inductance * i / s.in / s.period).value();
-        const N off = (emptying_time(s, i) / s.period).value();
+        const N off = on * (s.in / reset_voltage(s)).value();
         return effective<N>{i * root((on + off) / N(3.0)), i * root(on / N(3.0)), i / s.turns * root(off / N(3.0))};
     };
     const auto trapezes = [&] {
@@ -205,17 +256,14 @@ volts<N> output_ripple(const stage<N>& s, const amperes<N>& peak, const farads<N
 template<class N>
 volts<N> open_loop(const stage<N>& s, const ohms<N>& load)
 {
-    const amperes<N> i = full_peak(s);
-    const watts<N> stored = stored_power(s.inductance, i, s.period);
-    const N square = (stored * load).value();
-    const N duty = (s.on / s.period).value();
+    const N square = (full_power(s) * load).value();
     if (s.is == shape::flyback) {
         const volts<N> balance = volts<N>::from_value(root(square));
-        const volts<N> continuous = s.in * (s.turns * duty / (N(1.0) - duty));
+        const volts<N> continuous = s.in * (s.turns * s.duty / (N(1.0) - s.duty));
         return s.limited ? balance : volts<N>::from_value(greater_of(balance.value(), continuous.value()));
     }
     const volts<N> balance = s.in * half<N>() + volts<N>::from_value(root(squared(s.in.value()) * N(0.25) + square));
-    const volts<N> continuous = s.in / (N(1.0) - duty);
+    const volts<N> continuous = s.in / (N(1.0) - s.duty);
     return s.limited ? balance : volts<N>::from_value(greater_of(balance.value(), continuous.value()));
 }
 
@@ -232,43 +280,47 @@ volts<N> leakage_spike(const amperes<N>& peak, const henries<N>& leakage, const 
 }
 
 template<class N>
-volts<N> clamp_voltage(const volts<N>& reflected, const henries<N>& leakage, const amperes<N>& peak, const seconds<N>& period, const ohms<N>& r)
+watts<N> leakage_power(const stage<N>& s, const henries<N>& leakage)
 {
-    const N power = (stored_power(leakage, peak, period) * r).value();
+    return full_power(s) * (leakage / s.inductance).value();
+}
+
+template<class N>
+volts<N> clamp_voltage(const volts<N>& reflected, const watts<N>& leakage_power, const ohms<N>& r)
+{
+    const N power = (leakage_power * r).value();
     return (reflected + volts<N>::from_value(root(squared(reflected.value()) + N(4.0) * power))) * half<N>();
 }
 
 template<class N>
-watts<N> clamp_power(const volts<N>& reflected, const henries<N>& leakage, const amperes<N>& peak, const seconds<N>& period, const volts<N>& clamp)
+watts<N> clamp_power(const volts<N>& reflected, const watts<N>& leakage_power, const volts<N>& clamp)
 {
     // Vc/(Vc - VR) with each voltage once.
-    return stored_power(leakage, peak, period) / (N(1.0) - (reflected / clamp).value());
+    return leakage_power / (N(1.0) - (reflected / clamp).value());
 }
 
 template<class N>
-joules<N> avalanche_energy(const henries<N>& l, const amperes<N>& peak, const volts<N>& breakdown, const volts<N>& in)
+joules<N> avalanche_energy(const joules<N>& held, const volts<N>& breakdown, const volts<N>& in)
 {
-    return peak * peak * l * half<N>() / (N(1.0) - (in / breakdown).value());
-}
-
-template<class N>
-watts<N> stored_power(const henries<N>& l, const amperes<N>& peak, const seconds<N>& period)
-{
-    return peak * peak * l / period * half<N>();
+    return held / (N(1.0) - (in / breakdown).value());
 }
 
 #define ONEHAND_STAGE_FORMS(N)                                                                                                                       \
     template volts<N> reset_voltage(const stage<N>&);                                                                                                \
     template amperes<N> full_peak(const stage<N>&);                                                                                                  \
     template amperes<N> full_peak_lossy(const stage<N>&);                                                                                            \
-    template seconds<N> emptying_time(const stage<N>&, const amperes<N>&);                                                                           \
+    template webers<N> full_flux(const stage<N>&);                                                                                                   \
+    template seconds<N> emptying_time(const stage<N>&);                                                                                              \
+    template joules<N> full_energy(const stage<N>&);                                                                                                 \
+    template watts<N> full_power(const stage<N>&);                                                                                                   \
     template N slack(const stage<N>&);                                                                                                               \
     template N continuity(const stage<N>&);                                                                                                          \
     template N off_share(const stage<N>&);                                                                                                           \
     template amperes<N> regulated_average(const stage<N>&);                                                                                          \
     template amperes<N> regulated_peak(const stage<N>&);                                                                                             \
     template amperes<N> regulated_ripple(const stage<N>&);                                                                                           \
-    template coulombs<N> packet(const stage<N>&, const amperes<N>&);                                                                                 \
+    template coulombs<N> packet(const stage<N>&);                                                                                                    \
+    template amperes<N> full_current(const stage<N>&);                                                                                               \
     template amperes<N> most_load(const stage<N>&);                                                                                                  \
     template effective<N> effective_full(const stage<N>&);                                                                                           \
     template effective<N> effective_regulated(const stage<N>&);                                                                                      \
@@ -276,10 +328,10 @@ watts<N> stored_power(const henries<N>& l, const amperes<N>& peak, const seconds
     template volts<N> open_loop(const stage<N>&, const ohms<N>&);                                                                                    \
     template volts<N> unloaded_peak(const volts<N>&, const amperes<N>&, const henries<N>&, const farads<N>&);                                        \
     template volts<N> leakage_spike(const amperes<N>&, const henries<N>&, const farads<N>&);                                                         \
-    template volts<N> clamp_voltage(const volts<N>&, const henries<N>&, const amperes<N>&, const seconds<N>&, const ohms<N>&);                       \
-    template watts<N> clamp_power(const volts<N>&, const henries<N>&, const amperes<N>&, const seconds<N>&, const volts<N>&);                        \
-    template joules<N> avalanche_energy(const henries<N>&, const amperes<N>&, const volts<N>&, const volts<N>&);                                     \
-    template watts<N> stored_power(const henries<N>&, const amperes<N>&, const seconds<N>&);
+    template watts<N> leakage_power(const stage<N>&, const henries<N>&);                                                                             \
+    template volts<N> clamp_voltage(const volts<N>&, const watts<N>&, const ohms<N>&);                                                               \
+    template watts<N> clamp_power(const volts<N>&, const watts<N>&, const volts<N>&);                                                                \
+    template joules<N> avalanche_energy(const joules<N>&, const volts<N>&, const volts<N>&);
 
 ONEHAND_STAGE_FORMS(double)
 ONEHAND_STAGE_FORMS(interval)

@@ -10,21 +10,25 @@ namespace onehand::physics {
 enum class shape { boost, flyback };
 
 template<class N>
+using webers = boost::units::quantity<boost::units::si::magnetic_flux, N>;
+
+template<class N>
 struct stage {
     shape is = shape::boost;
     volts<N> in;
-    henries<N> inductance;     // of the coil, or of the primary
-    seconds<N> on;             // of a full cycle
-    seconds<N> period;         // of a full cycle
-    N turns = N(1.0);          // secondary over primary; 1 for a boost stage
-    volts<N> out;              // of the port it feeds, at the rectifier's cathode
-    volts<N> drop;             // of the rectifier
-    amperes<N> load;           // drawn from that port
-    ohms<N> coil;              // series resistance of the winding
-    ohms<N> on_resistance;     // of the switch
-    bool limited = false;      // a comparator ends each cycle at a peak current
-    amperes<N> limit;          // that current
-    seconds<N> delay;          // of that comparator
+    henries<N> inductance; // of the coil, or of the primary
+    seconds<N> on;         // of a full cycle
+    seconds<N> period;     // of a full cycle
+    N duty = N(0.0);       // on over period, in a form of its own: intervals of the two would not know that they move together
+    N turns = N(1.0);      // secondary over primary; 1 for a boost stage
+    volts<N> out;          // of the port it feeds, at the rectifier's cathode
+    volts<N> drop;         // of the rectifier
+    amperes<N> load;       // drawn from that port
+    ohms<N> coil;          // series resistance of the winding
+    ohms<N> on_resistance; // of the switch
+    bool limited = false;  // a comparator ends each cycle at a peak current
+    amperes<N> limit;      // that current
+    seconds<N> delay;      // of that comparator
 };
 
 /// Voltage across the (primary) inductance while it empties: out + drop - in of a boost stage, (out + drop)/turns of a flyback. At least a millivolt.
@@ -38,9 +42,19 @@ amperes<N> full_peak(const stage<N>& s);
 template<class N>
 amperes<N> full_peak_lossy(const stage<N>& s);
 
-/// Time that a peak current takes to run out: L i/reset.
+/// Volt-seconds of a full cycle, L i: in on, or L limit + in delay.
 template<class N>
-seconds<N> emptying_time(const stage<N>& s, const amperes<N>& peak);
+webers<N> full_flux(const stage<N>& s);
+
+/// Time that a full cycle takes to run out: L i/reset.
+template<class N>
+seconds<N> emptying_time(const stage<N>& s);
+
+/// Energy of a full cycle L i^2/2, and the power of full cycles without a pause, L i^2/(2 T).
+template<class N>
+joules<N> full_energy(const stage<N>& s);
+template<class N>
+watts<N> full_power(const stage<N>& s);
 
 /// 1 - (on + emptying)/period of a full cycle: not negative where even full cycles run empty (discontinuous).
 template<class N>
@@ -63,9 +77,11 @@ amperes<N> regulated_peak(const stage<N>& s);
 template<class N>
 amperes<N> regulated_ripple(const stage<N>& s);
 
-/// Charge a full discontinuous cycle hands to the output: i emptying/(2 turns).
+/// Charge a full discontinuous cycle hands to the output, i emptying/(2 turns), and the current of full cycles without a pause.
 template<class N>
-coulombs<N> packet(const stage<N>& s, const amperes<N>& peak);
+coulombs<N> packet(const stage<N>& s);
+template<class N>
+amperes<N> full_current(const stage<N>& s);
 
 /// Greatest load current at the output voltage: full cycles without a pause, series resistances counted.
 template<class N>
@@ -98,19 +114,18 @@ volts<N> unloaded_peak(const volts<N>& in, const amperes<N>& peak, const henries
 template<class N>
 volts<N> leakage_spike(const amperes<N>& peak, const henries<N>& leakage, const farads<N>& c);
 
-/// Voltage above the input of a resistor-capacitor-diode clamp: Vc (Vc - VR) = R Llk i^2/(2 T) (derived; Hart, chapter 7).
+/// Power that a leakage inductance carries in full cycles: Llk i^2/(2 T).
 template<class N>
-volts<N> clamp_voltage(const volts<N>& reflected, const henries<N>& leakage, const amperes<N>& peak, const seconds<N>& period, const ohms<N>& r);
-/// Power in it: (Llk i^2/(2 T)) Vc/(Vc - VR).
+watts<N> leakage_power(const stage<N>& s, const henries<N>& leakage);
+/// Voltage above the input of a resistor-capacitor-diode clamp: Vc (Vc - VR) = R P (derived; Hart, chapter 7).
 template<class N>
-watts<N> clamp_power(const volts<N>& reflected, const henries<N>& leakage, const amperes<N>& peak, const seconds<N>& period, const volts<N>& clamp);
+volts<N> clamp_voltage(const volts<N>& reflected, const watts<N>& leakage_power, const ohms<N>& r);
+/// Power in it: P Vc/(Vc - VR).
+template<class N>
+watts<N> clamp_power(const volts<N>& reflected, const watts<N>& leakage_power, const volts<N>& clamp);
 
-/// Energy of one avalanche: (L i^2/2) V/(V - in), V the voltage at which the switch breaks down.
+/// Energy of one avalanche: E V/(V - in), E what the inductance holds, V the voltage at which the switch breaks down.
 template<class N>
-joules<N> avalanche_energy(const henries<N>& l, const amperes<N>& peak, const volts<N>& breakdown, const volts<N>& in);
-
-/// Stored power of full cycles: L i^2/(2 T).
-template<class N>
-watts<N> stored_power(const henries<N>& l, const amperes<N>& peak, const seconds<N>& period);
+joules<N> avalanche_energy(const joules<N>& held, const volts<N>& breakdown, const volts<N>& in);
 
 } // namespace onehand::physics

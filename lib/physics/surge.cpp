@@ -37,7 +37,7 @@ melting_integral needed_melting(melting_integral pulse, double share)
 
 namespace {
 
-/// The averaged stage: reset^2 grows by L i^2/(turns^2 T C) each second, whichever the shape.
+/// The averaged stage: reset^2 grows by 2 P/(turns^2 C) each second, whichever the shape.
 struct averaged {
     double reset;  // at the start, volt
     double growth; // volt^2/s
@@ -50,7 +50,7 @@ struct averaged {
 averaged average_of(const pumped_rail& p)
 {
     const double reset = std::max(0.0, (p.from.value() - p.input.value()) / p.turns);
-    const double growth = p.inductance.value() * p.peak.value() * p.peak.value() / (p.turns * p.turns * p.period.value() * p.rail.value());
+    const double growth = 2.0 * p.stored.value() / (p.turns * p.turns * p.rail.value());
     return {reset, growth, p.turns, p.input.value()};
 }
 
@@ -90,8 +90,7 @@ volt carried_to(const pumped_rail& p)
     const double filtered = p.filter.value() > 0.0 ? std::max(reach, filter_time(a, p.set_point.value(), p.filter.value())) : reach;
     const double end = a.rail(filtered + p.lag.value());
     const double reset = std::max((end - a.input) / a.turns, 1e-3);
-    const double packet = p.inductance.value() * p.peak.value() * p.peak.value() / (2.0 * p.turns * reset);
-    return volt::from_value(end + packet / p.rail.value());
+    return volt::from_value(end + p.packet.value() / (p.turns * reset) / p.rail.value());
 }
 
 second pumping_time(const pumped_rail& p, volt to)

@@ -4,7 +4,8 @@
 
 namespace onehand::physics {
 
-using melting_integral = bu::quantity<bu::multiply_typeof_helper<bu::power_typeof_helper<bu::si::current, bu::static_rational<2>>::type, bu::si::time>::type>;
+using melting_integral =
+    bu::quantity<bu::multiply_typeof_helper<bu::power_typeof_helper<bu::si::current, bu::static_rational<2>>::type, bu::si::time>::type>;
 
 /// Peak of a capacitor charged through a coil from nothing: U sqrt(C/L), after a quarter period (University Physics vol. 2, 14.5).
 ampere coil_inrush(volt u, farad c, henry l);
@@ -20,13 +21,12 @@ melting_integral needed_melting(melting_integral pulse, double share);
 
 /// A stage that hands the same packet to the output every cycle while the sensed voltage follows the rail through a first-order filter.
 struct pumped_rail {
-    volt from;        // where the filter is taken as empty and the rail starts
-    volt set_point;   // where the sensed voltage stops the stage
-    volt input;       // boost: counts against the rail; flyback: zero
-    henry inductance; // primary
+    volt from;      // where the filter is taken as empty and the rail starts
+    volt set_point; // where the sensed voltage stops the stage
+    volt input;     // boost: counts against the rail; flyback: zero
     double turns = 1.0;
-    ampere peak;
-    second period;
+    watt stored;  // L i^2/(2 T) of full cycles
+    joule packet; // energy of the last cycle
     farad rail;
     second filter; // its time constant, zero for none
     second lag;    // pure delay behind it

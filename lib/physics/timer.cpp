@@ -28,6 +28,15 @@ astable_times<N> astable_bypassed(const ohms<N>& ra, const ohms<N>& rb, const fa
     return {ra * c * charging(share, drop), rb * c * N(two)};
 }
 
+template<class N>
+N astable_duty(const ohms<N>& ra, const ohms<N>& rb, const N& share, const N& drop, bool bypassed)
+{
+    const N more = (ra / rb).value() + N(bypassed ? 0.0 : 1.0);
+    return N(1.0) / (N(1.0) + N(two) / (charging(share, drop) * more));
+}
+
+template double astable_duty(const ohms<double>&, const ohms<double>&, const double&, const double&, bool);
+template interval astable_duty(const ohms<interval>&, const ohms<interval>&, const interval&, const interval&, bool);
 template astable_times<double> astable(const ohms<double>&, const ohms<double>&, const farads<double>&, const double&);
 template astable_times<interval> astable(const ohms<interval>&, const ohms<interval>&, const farads<interval>&, const interval&);
 template astable_times<double> astable_bypassed(const ohms<double>&, const ohms<double>&, const farads<double>&, const double&, const double&);

@@ -2,6 +2,7 @@
 #include "stress/items.hpp"
 #include "stress/part_facts.hpp"
 #include "stress/solved.hpp"
+#include "stress/stage_facts.hpp"
 
 #include <algorithm>
 
@@ -21,17 +22,6 @@ value below_zero(value v)
 bool is_electrolytic(const std::string& dielectric)
 {
     return dielectric.find("electrolytic") != std::string::npos || dielectric.find("tantalum") != std::string::npos;
-}
-
-value diode_fact(const rail& output, const part& p, const value& voltage)
-{
-    const bool stage = std::find(output.stage_parts.begin(), output.stage_parts.end(), p.ref) != output.stage_parts.end();
-    if (!stage) {
-        return below_zero(voltage);
-    }
-    value v = output.output; // a boost rectifier blocks the whole rail while the switch is on
-    v.shown.formula = "the rail, while the switch is on";
-    return output.topology == "boost" ? v : missing_value(value::type::number, {p.ref + " in a " + output.topology + " stage"});
 }
 
 } // namespace
@@ -78,6 +68,9 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
             return *v;
         }
     }
+    if (const auto v = stage_part_fact(*this, *p, name)) {
+        return *v;
+    }
     const auto found = at(in).bodies.find(s.name);
     if (name == "peak-voltage") {
         return output_.peak;
@@ -94,7 +87,7 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
             return b.power;
         }
         if (name == "reverse-voltage") {
-            return p->kind == "diode" ? diode_fact(output_, *p, b.voltage) : below_zero(b.voltage);
+            return below_zero(b.voltage);
         }
         if (name == "track-current" && b.track_current) {
             return *b.track_current;
@@ -220,6 +213,11 @@ value solved_supply::converter_fact(const std::string& name) const
         return output_.topology == "boost" || output_.topology == "boost-multiplier"
                    ? truth_of(false)
                    : missing_value(value::type::truth, {(bodies_.stage ? bodies_.stage->name : std::string("converter")) + ".isolates"});
+    }
+    if (bodies_.stage) {
+        if (const auto v = stage_fact(*this, name)) {
+            return *v;
+        }
     }
     return missing_value(value::type::number, {"converter." + name});
 }

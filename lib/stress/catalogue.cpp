@@ -44,7 +44,6 @@ void add_parts(std::vector<fact_spec>& list)
     list.push_back(told("capacitor", "balancing-resistance", dim::resistance, "of the resistors straight across it, at its greatest"));
     list.push_back(told("capacitor", "balancing-limit", dim::resistance, "(n U_rated - U)/((n - 1) I_leak)"));
     list.push_back(solved("capacitor", "initial-share", dim::voltage, "its share of the string's voltage by capacitance alone"));
-    list.push_back(solved("mosfet", "peak-voltage", dim::voltage, "drain to source at its highest, the spike included"));
     list.push_back(solved("diode", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
     list.push_back(solved("zener", "reverse-voltage", dim::voltage, "cathode above anode at its highest"));
     list.push_back(
@@ -53,6 +52,81 @@ void add_parts(std::vector<fact_spec>& list)
     list.push_back(truth("capacitor", "electrolytic", "its dielectric is an electrolyte: over voltage or reversed it can burst"));
     list.push_back(solved("trimmer", "track-current", dim::current, "the greater of the two sections' currents, wiper anywhere in its travel"));
     list.push_back(solved("trimmer", "span-voltage", dim::voltage, "greatest voltage between any two of its terminals", {}));
+}
+
+void add_stage_parts(std::vector<fact_spec>& list)
+{
+    for (const char* s : {"inductor", "transformer"}) {
+        list.push_back(truth(s, "stores", "it is the coil or transformer of the converter's stage"));
+        list.push_back(solved(s, "peak-current", dim::current, "greatest recurring peak of the stage's coil current"));
+        list.push_back(solved(s, "start-up-peak", dim::current, "greatest coil current until the rail stands, lossless"));
+        list.push_back(solved(s, "effective-current", dim::current, "root mean square of the coil current at the greatest load"));
+    }
+    for (const char* s : {"mosfet", "bjt"}) {
+        list.push_back(truth(s, "switches-stage", "it is the switch of the converter's stage"));
+        list.push_back(solved(s, "effective-current", dim::current, "root mean square of the switch current at the greatest load"));
+        list.push_back(solved(s, "peak-voltage", dim::voltage, "across the switch at its highest, the spike included"));
+    }
+    list.push_back(solved("mosfet", "heat", dim::power, "I^2 Ron hot, and its own capacitance emptied into it each cycle"));
+    list.push_back(solved("mosfet", "junction", dim::temperature, "air inside + heat times thermal resistance"));
+    list.push_back(solved("mosfet", "avalanche-pulse", dim::energy, "one full cycle into the switch when the rectifier opens"));
+    list.push_back(told("mosfet", "gate-peak", dim::voltage, "highest drive level; unsaid what feeds the driver"));
+    list.push_back(told("mosfet", "gate-high", dim::voltage, "drive level that switches it on, as written"));
+    list.push_back(told("mosfet", "gate-low", dim::voltage, "drive level that switches it off, as written"));
+    list.push_back(truth("diode", "rectifies", "it is the rectifier of the stage, or a diode of its ladder"));
+    list.push_back(told("diode", "recovery-share", dim::none, "recovery time times switching frequency"));
+    list.push_back(solved("diode", "average-current", dim::current, "mean forward current at the greatest load"));
+    list.push_back(solved("diode", "inrush", dim::current, "peak through it when the input is switched on, everything empty"));
+    list.push_back(solved("diode", "junction", dim::temperature, "air inside + forward drop times current times thermal resistance"));
+    list.push_back(truth("capacitor", "on-input", "it stands straight across the input"));
+    list.push_back(truth("capacitor", "at-output", "it stands straight across the output of a stage"));
+    list.push_back(solved("capacitor", "ripple-through", dim::current, "effective current that the rectifier's pulses may send through it"));
+    list.push_back(told("capacitor", "surge-limit", dim::voltage, "what it stands briefly: as written, by its standard, else its rated voltage"));
+    list.push_back(solved("capacitor", "runaway-voltage", dim::voltage, "its voltage when feedback is lost"));
+    list.push_back(told("capacitor", "hot-plug-voltage", dim::voltage, "twice the input"));
+    list.push_back(told("capacitor", "adapter-voltage", dim::voltage, "highest adapter whose plug fits"));
+    list.push_back(told("capacitor", "reversed-voltage", dim::voltage, "against its marking with the input reversed; 0 V if it is not straight on it"));
+    list.push_back(truth("capacitor", "input-reversible", "the input can be connected the wrong way round, as written"));
+    list.push_back(solved("fuse", "inrush-integral", {{0, 0, 1, 2, 0}}, "I2t of switching on with everything empty"));
+    list.push_back(told("fuse", "short-current", dim::current, "what flows with the switch held on: coil and switch, or what the input delivers"));
+    list.push_back(truth("fuse", "in-input", "it stands in the input path"));
+    for (const char* s : {"timer", "controller"}) {
+        list.push_back(truth(s, "on-input", "its supply is the input itself"));
+        list.push_back(told(s, "adapter-voltage", dim::voltage, "highest adapter whose plug fits"));
+    }
+}
+
+void add_converter(std::vector<fact_spec>& list)
+{
+    list.push_back(choice("converter", "mode", "whether the coil runs empty each cycle", {"continuous", "discontinuous", "either"}));
+    const std::pair<const char*, const char*> amperes[] = {{"inductor-peak", "greatest recurring peak of the coil current"},
+                                                           {"inductor-average", "mean coil current at the load"},
+                                                           {"inductor-effective", "root mean square of the coil current"},
+                                                           {"inductor-ripple", "coil current, peak to peak"},
+                                                           {"start-up-peak", "greatest coil current until the rail stands, lossless"},
+                                                           {"switch-effective", "root mean square of the switch current"},
+                                                           {"rectifier-average", "mean rectifier current"},
+                                                           {"rectifier-effective", "root mean square of the rectifier current"},
+                                                           {"input-current", "mean input current, none to full load"},
+                                                           {"load-current", "what hangs on the output draws, none to its most"},
+                                                           {"inrush-current", "peak through coil and rectifier at switch-on"},
+                                                           {"held-on-current", "with the switch held on"}};
+    for (const auto& [name, meaning] : amperes) {
+        list.push_back(solved("converter", name, dim::current, meaning));
+    }
+    list.push_back(solved("converter", "frequency", dim::frequency, "of full cycles"));
+    list.push_back(solved("converter", "duty", dim::none, "of full cycles"));
+    list.push_back(solved("converter", "output-ripple", dim::voltage, "peak to peak on the output's capacitance, series resistance not counted"));
+    list.push_back(solved("converter", "load-power", dim::power, "output times load current"));
+    list.push_back(solved("converter", "available-power", dim::power, "full cycles without a pause, losses counted"));
+    list.push_back(solved("converter", "headroom", dim::none, "greatest load current it can hold over what is drawn"));
+    list.push_back(solved("converter", "losses", dim::power, "coil, switch and rectifier at the load"));
+    list.push_back(solved("converter", "overshoot", dim::voltage, "above the set point at start-up or when the load goes"));
+    list.push_back(solved("converter", "inrush-integral", {{0, 0, 1, 2, 0}}, "I2t of switching on with everything empty"));
+    list.push_back(solved("converter", "runaway-voltage", dim::voltage, "output with feedback lost, until something ends it"));
+    list.push_back(solved("converter", "runaway-energy", dim::energy, "stored across the output then"));
+    list.push_back(solved("converter", "body-power", dim::power, "into 2 kohm across the output, running"));
+    list.push_back(truth("converter", "wiper-open-raises", "a trimmer of the feedback whose wiper lifts off raises the output"));
 }
 
 void add_gaps(std::vector<fact_spec>& list)
@@ -175,8 +249,10 @@ const std::vector<fact_spec>& fact_catalogue()
     static const std::vector<fact_spec> list = [] {
         std::vector<fact_spec> l;
         add_parts(l);
+        add_stage_parts(l);
         add_gaps(l);
         add_energy(l);
+        add_converter(l);
         add_whole(l);
         return l;
     }();

@@ -12,8 +12,8 @@ using form = element_spec::form;
 
 bool held_by_feedback(const supply& s, const rail& output, state in)
 {
-    return in != state::standby && output.basis.starts_with("held by") && !output.feedback_lost && !output.output.numbers.empty() &&
-           s.stage.has_value();
+    return in != state::standby && in != state::start_up && output.basis.starts_with("held by") && !output.feedback_lost &&
+           !output.output.numbers.empty() && s.stage.has_value();
 }
 
 /// Both solutions of one state and the tables that turn them into values.
@@ -55,6 +55,7 @@ public:
             }
         }
         add_others();
+        override_ladder();
         return std::move(out_);
     }
 
@@ -198,6 +199,14 @@ private:
     value between(const std::string& a, int i, const std::string& b, int j) const
     {
         value v;
+        const auto held = [&](const std::string& net) { return net == s_.return_net || net == rail_.positive || net == rail_.negative; };
+        const auto units = held(a) && held(b) ? std::nullopt : rail_.rungs.between(a, b);
+        if (units && out_.in != state::standby && !rail_.port.numbers.empty()) {
+            // Both hang on the same ladder: they move together.
+            v = hull(in_units(rail_.port, units->low, ""), in_units(rail_.port, units->high, ""));
+            v.shown.formula = "V(" + a + ") - V(" + b + "), unloaded ladder";
+            return v;
+        }
         if (!together(i, j)) {
             // Bounded by both ends' own bounds; no closer, since nothing ties them.
             const value x = out_.potential.at(a);
@@ -303,9 +312,10 @@ private:
                 continue;
             }
             body_solution b;
-            if (s_.stage && p.ref == s_.stage->power_switch) {
+            if (s_.stage && of(p, s_.stage->power_switch)) {
                 b.voltage = out_.in == state::standby ? out_.voltage(p.terminals.front().net, p.terminals.back().net) : stage_voltage();
-            } else if (s_.stage && p.ref == s_.stage->rectifier) {
+            } else if (s_.stage && of(p, s_.stage->rectifier)) {
+                // Each body of a string may have to block all of it: the one that leaks least does.
                 b.voltage = rectifier_voltage();
             } else {
                 b.voltage = out_.voltage(p.terminals[0].net, p.terminals[1].net);
@@ -313,6 +323,8 @@ private:
             out_.bodies[p.ref] = std::move(b);
         }
     }
+
+    static bool of(const part& p, const std::string& ref) { return !ref.empty() && (p.ref == ref || p.ref.starts_with(ref + "/")); }
 
     value stage_voltage() const
     {
@@ -324,10 +336,13 @@ private:
         return v;
     }
 
+    /// What the rectifier blocks while the switch is on: the output, and what the secondary stands the other way.
     value rectifier_voltage() const
     {
-        value v = out_.in == state::standby ? rail_.standby : rail_.output;
-        if (rail_.topology != "boost") {
+        value v = out_.in == state::standby ? rail_.standby : out_.in == state::start_up ? rail_.start_up : rail_.output;
+        if (rail_.topology == "flyback") {
+            v = flyback_reverse(v);
+        } else if (rail_.topology != "boost") {
             return missing_value(value::type::number, {"the rectifier voltage of a " + rail_.topology + " stage"});
         }
         for (spread& s : v.numbers) {
@@ -335,8 +350,78 @@ private:
             s.in_use.high = s.whole.high = 0.0;
             s.nominal.reset();
         }
-        v.shown.formula = "blocks the rail while the switch is on";
+        v.shown.formula = rail_.topology == "flyback" ? "output + turns Uin, ringing not counted" : "blocks the rail while the switch is on";
         return v;
+    }
+
+    value flyback_reverse(const value& output) const
+    {
+        if (rail_.secondary_net.empty()) {
+            return missing_value(value::type::number, {"a secondary that the rectifier hangs on"});
+        }
+        // The side of the swing that the switch drives: below zero where the anode swings, above where the cathode does.
+        const bool below = swings_by_anode();
+        value driven = rail_.secondary_swing;
+        for (spread& s : driven.numbers) {
+            s.in_use = {0.0, below ? -s.in_use.low : s.in_use.high};
+            s.whole = {0.0, below ? -s.whole.low : s.whole.high};
+        }
+        return sum(output, driven);
+    }
+
+    bool swings_by_anode() const
+    {
+        const part* d = s_.find_part(s_.stage->rectifier);
+        return d != nullptr && d->net("anode") == rail_.secondary_net;
+    }
+
+    /// In a ladder a capacitor holds the same over both phases, a diode blocks the greater of them.
+    void override_ladder()
+    {
+        const ladder& l = rail_.rungs;
+        if (!l.there || out_.in == state::standby) {
+            return;
+        }
+        if (!l.why.empty()) {
+            for (const std::string& ref : s_.stage->ladder) {
+                out_.bodies[ref].voltage = missing_value(value::type::number, {ref + " in a ladder that cannot be solved: " + l.why});
+            }
+            return;
+        }
+        const value port = out_.in == state::start_up ? lifted_port() : rail_.port;
+        for (const ladder::stressed& c : l.capacitors) {
+            out_.bodies[c.ref].voltage = in_units(port, c.voltage, "its share of the ladder");
+        }
+        for (const ladder::stressed& d : l.diodes) {
+            out_.bodies[d.ref].voltage = in_units(port, -d.voltage, "blocks its step of the ladder");
+        }
+    }
+
+    value lifted_port() const
+    {
+        value v = rail_.port;
+        const double share = rail_.topology == "boost-multiplier" ? rail_.rungs.multiple : 1.0;
+        inherit(v, rail_.overshoot);
+        for (spread& s : v.numbers) {
+            if (!rail_.overshoot.numbers.empty() && share > 0.0) {
+                s.in_use.high += rail_.overshoot.numbers.front().in_use.high / share;
+                s.whole.high += rail_.overshoot.numbers.front().whole.high / share;
+            }
+        }
+        return v;
+    }
+
+    /// From nothing to so many times the port's voltage: the ladder fills from nothing, and a load takes part of it.
+    static value in_units(value port, double units, const std::string& formula)
+    {
+        for (spread& s : port.numbers) {
+            for (range* r : {&s.in_use, &s.whole}) {
+                *r = {std::min(0.0, units * r->high), std::max(0.0, units * r->high)};
+            }
+            s.nominal.reset();
+        }
+        port.shown.formula = formula;
+        return port;
     }
 
     const supply& s_;

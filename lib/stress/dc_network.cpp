@@ -26,6 +26,8 @@ public:
         hold_input();
         hold_output();
         hold_stage();
+        hold_secondary();
+        hold_ladder();
         hold_gate();
         for (element& e : wire(s_, lib, in_, rail_.stage_parts)) {
             add(std::move(e));
@@ -81,6 +83,8 @@ private:
         }
         if (in_ == state::standby) {
             hold(rail_.positive, rail_.negative, rail_.standby, "output in standby");
+        } else if (in_ == state::start_up) {
+            hold(rail_.positive, rail_.negative, from_nothing(rail_.start_up), "output at start-up");
         } else if (held_) {
             const field* bias = s_.stage->feedback.contains("bias-current") ? &s_.stage->feedback.at("bias-current") : nullptr;
             out_.net.held = circuit::held_output{node(rail_.positive),
@@ -94,17 +98,59 @@ private:
         }
     }
 
+    static value from_nothing(value v)
+    {
+        for (spread& s : v.numbers) {
+            s.in_use.low = std::min(0.0, s.in_use.low);
+            s.whole.low = std::min(0.0, s.whole.low);
+        }
+        return v;
+    }
+
     /// The switch node swings from the switch's return to the peak.
     void hold_stage()
     {
         if (in_ == state::standby || rail_.switch_net.empty()) {
             return;
         }
-        value swing = rail_.peak;
-        for (spread& s : swing.numbers) {
-            s.in_use.low = s.whole.low = 0.0;
+        hold(rail_.switch_net, rail_.switch_return, from_nothing(rail_.peak), "switch node");
+        if (!rail_.clamp_net.empty() && rail_.clamp_net != rail_.clamp_return) {
+            hold(rail_.clamp_net, rail_.clamp_return, from_nothing(rail_.clamp_voltage), "clamp");
         }
-        hold(rail_.switch_net, rail_.switch_return, swing, "switch node");
+    }
+
+    void hold_secondary()
+    {
+        if (in_ != state::standby && !rail_.secondary_net.empty()) {
+            hold(rail_.secondary_net, rail_.secondary_return, rail_.secondary_swing, "secondary");
+        }
+    }
+
+    /// Each net of a ladder stands, or moves with the switch node, above where the diodes have pumped it.
+    void hold_ladder()
+    {
+        const ladder& l = rail_.rungs;
+        if (!l.there || in_ == state::standby) {
+            return;
+        }
+        for (const auto& [net, at] : l.nets) {
+            const bool known = net == s_.return_net || net == rail_.positive || net == rail_.negative || net == rail_.switch_net;
+            const auto units = l.between(net, s_.return_net).value_or(range{at.base, at.base + (at.moving ? 1.0 : 0.0)});
+            if (!known) {
+                hold(net, s_.return_net, times(rail_.port, units), "ladder net " + net);
+            }
+        }
+    }
+
+    static value times(value port, const range& units)
+    {
+        for (spread& s : port.numbers) {
+            for (range* r : {&s.in_use, &s.whole}) {
+                *r = {std::min({0.0, units.low * r->high, units.high * r->high}), std::max({0.0, units.low * r->high, units.high * r->high})};
+            }
+            s.nominal.reset();
+        }
+        return port;
     }
 
     /// The driver is fed from the input: the gate stands anywhere from the switch's return to the highest input.
@@ -130,6 +176,7 @@ private:
     void add(element e)
     {
         // A coil is held at both ends while the stage runs; its own voltage is the stage's.
+        // So are the windings of a transformer, whose secondary is held as it swings.
         const bool stage_coil = in_ != state::standby && !rail_.switch_net.empty() && s_.stage && e.ref == s_.stage->inductor;
         const int from = node(e.from);
         const int to = node(e.to);

@@ -2,6 +2,7 @@
 #include "stress/part_facts.hpp"
 #include "stress/paths.hpp"
 #include "stress/spread_math.hpp"
+#include "stress/stage_rail.hpp"
 
 #include <algorithm>
 
@@ -68,7 +69,7 @@ value faulted_touch_current(const solved_supply& s, const access_item& a)
 {
     const value built = greater(a.touch_current.at(state::no_load), a.touch_current.at(state::running));
     return worst_after_fault(s, a, built, [&](const supply& edited, const rail& output, state in) {
-        return current_through(edited, s.data(), output, in, a.where.nets[0], a.where.nets[1], standard_body);
+        return touch_current(edited, s.data(), output, in, a.where.nets[0], a.where.nets[1], standard_body);
     });
 }
 

@@ -3,6 +3,7 @@
 #include "quantity/text.hpp"
 #include "stress/dc_network.hpp"
 #include "stress/spread_math.hpp"
+#include "stress/stage_rail.hpp"
 
 #include <algorithm>
 #include <cmath>
@@ -12,7 +13,6 @@ namespace onehand {
 
 namespace {
 
-constexpr double unsaid_spike = 0.30;  // of the rail: common practice, no source
 constexpr double rectifier_drop = 1.5; // volt at most across rectifier and coil when settled: common practice, no source
 
 bool by_feedback(const converter& c)
@@ -105,48 +105,72 @@ void find_output(const supply& s, const library& lib, rail& r)
     }
 }
 
-/// Stage stopped and settled: a boost rail stays near the input, the others anywhere up to their output.
-void find_standby(const supply& s, rail& r)
+/// Stage stopped and settled: a boost rail stays near the input, a ladder's no higher than that, a flyback's sinks to nothing where something surely
+/// discharges it; else anywhere up to the output.
+void find_standby(const supply& s, bool discharged, rail& r)
 {
     const value in = written_value(s.fed.voltage, value::type::number, "input.voltage");
-    if (r.topology != "boost") {
-        r.standby = r.output;
+    const bool settles = r.topology != "module" && discharged;
+    if (r.topology == "boost" || (r.topology == "boost-multiplier" && settles)) {
+        const double drop = r.topology == "boost" ? rectifier_drop : unbounded;
+        r.standby = in;
         for (spread& v : r.standby.numbers) {
-            v.in_use.low = v.whole.low = 0.0;
+            v.in_use.low = std::max(0.0, v.in_use.low - drop);
+            v.whole.low = std::max(0.0, v.whole.low - drop);
             v.nominal.reset();
         }
+        r.standby.shown.formula = r.topology == "boost" ? "input through coil and rectifier" : "at most the input, through coil and ladder";
         return;
     }
-    r.standby = in;
+    if (settles) {
+        r.standby = number(exactly({0.0, dim::voltage}));
+        r.standby.shown.formula = "nothing feeds it, soldered resistances discharge it";
+        return;
+    }
+    r.standby = r.output;
     for (spread& v : r.standby.numbers) {
-        v.in_use.low = std::max(0.0, v.in_use.low - rectifier_drop);
-        v.whole.low = std::max(0.0, v.whole.low - rectifier_drop);
+        v.in_use.low = v.whole.low = 0.0;
         v.nominal.reset();
     }
-    r.standby.shown.formula = "input through coil and rectifier";
 }
 
-void find_peak(const supply& s, rail& r)
+/// A part's own bodies where it is a string.
+void add_bodies(const supply& s, const std::string& ref, std::vector<std::string>& list)
 {
-    const converter& c = *s.stage;
-    if (r.topology != "boost") {
-        r.peak = missing_value(value::type::number, {"the switch voltage of a " + r.topology + " stage"});
+    if (ref.empty()) {
         return;
     }
-    const field* spike = c.find("spike");
-    const value ringing = spike != nullptr ? number(*spike->number()) : product(r.output, number(exactly({unsaid_spike, dim::none})));
-    r.peak = sum(r.output, ringing);
-    for (spread& v : r.peak.numbers) {
-        v.dim = dim::voltage;
+    for (const part& p : s.parts) {
+        if (p.ref == ref || p.ref.starts_with(ref + "/")) {
+            list.push_back(p.ref);
+        }
     }
-    r.peak.shown.inputs = r.output.shown.inputs;
-    if (spike != nullptr) {
-        r.peak.shown.formula = "rail + spike";
-        r.peak.shown.inputs.push_back(input_of(c.name + ".spike", *spike));
-    } else {
-        r.peak.shown.formula = "rail + 30 % of it";
-        r.peak.assumed.push_back("a spike of 30 % of the rail on " + (r.switch_net.empty() ? std::string("the switch") : r.switch_net) + " (" +
-                                 c.name + ".spike unsaid; practice)");
+}
+
+void find_nets(const supply& s, rail& r)
+{
+    const converter& c = *s.stage;
+    r.topology = c.topology;
+    if (c.outputs.size() == 2) {
+        r.positive = c.outputs[0];
+        r.negative = c.outputs[1];
+    }
+    add_bodies(s, c.power_switch, r.stage_parts);
+    add_bodies(s, c.rectifier, r.stage_parts);
+    for (const std::string& ref : c.ladder) {
+        const part* p = s.find_part(ref);
+        if (p == nullptr || p->kind == "diode") {
+            add_bodies(s, ref, r.stage_parts);
+        }
+    }
+    if (c.clamp) {
+        add_bodies(s, c.clamp->diode, r.stage_parts);
+    }
+    r.gate_net = c.gate;
+    const part* power_switch = s.find_part(c.power_switch);
+    if (power_switch != nullptr && r.topology != "module" && !r.topology.empty()) {
+        r.switch_net = power_switch->terminals.front().net;
+        r.switch_return = power_switch->terminals.back().net;
     }
 }
 
@@ -160,25 +184,11 @@ rail find_rail(const supply& s, const library& lib)
         r.standby = r.peak = r.output;
         return r;
     }
-    const converter& c = *s.stage;
-    r.topology = c.topology;
-    if (c.outputs.size() == 2) {
-        r.positive = c.outputs[0];
-        r.negative = c.outputs[1];
-    }
-    for (const std::string& ref : {c.power_switch, c.rectifier}) {
-        if (!ref.empty()) {
-            r.stage_parts.push_back(ref);
-        }
-    }
-    const part* power_switch = s.find_part(c.power_switch);
-    r.gate_net = c.gate;
+    find_nets(s, r);
     find_output(s, lib, r);
-    find_standby(s, r);
-    if (power_switch != nullptr && r.topology == "boost") {
-        r.switch_net = power_switch->terminals.front().net;
-        r.switch_return = power_switch->terminals.back().net;
-    }
+    const bool discharged = sure_conductance(s, lib, r, true) > 0.0;
+    find_stage(s, lib, r);
+    find_standby(s, discharged, r);
     find_peak(s, r);
     return r;
 }

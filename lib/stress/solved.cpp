@@ -1,7 +1,9 @@
 #include "stress/solved.hpp"
 
 #include "stress/paths.hpp"
+#include "stress/rail_load.hpp"
 #include "stress/spread_math.hpp"
+#include "stress/stage_rail.hpp"
 
 #include <algorithm>
 
@@ -34,7 +36,7 @@ value working_voltage(const std::vector<dc_solution>& states, const std::string&
     for (spread& x : v.numbers) {
         x = {x.dim, {x.in_use.high, x.in_use.high}, {x.in_use.high, x.whole.high}, std::nullopt};
     }
-    v.shown.formula = "greatest |" + a + " - " + b + "| over running, no-load and standby";
+    v.shown.formula = "greatest |" + a + " - " + b + "| over start-up, running, no-load and standby";
     return v;
 }
 
@@ -43,9 +45,10 @@ value working_voltage(const std::vector<dc_solution>& states, const std::string&
 solved_supply::solved_supply(supply s, const library& lib)
     : written_(std::move(s)), bodies_(expand_bodies(written_)), lib_(lib), output_(find_rail(bodies_, lib_))
 {
-    for (const state in : {state::running, state::no_load, state::standby}) {
+    for (const state in : {state::running, state::no_load, state::standby, state::start_up}) {
         states_.push_back(solve_dc(bodies_, lib_, output_, in));
     }
+    load_stage();
     capacitors_ = charged_capacitors(bodies_, lib_, output_, states_);
     for (const bool shorted : {false, true}) {
         off_cases_.push_back({shorted, false, {}});
@@ -61,6 +64,21 @@ solved_supply::solved_supply(supply s, const library& lib)
 }
 
 solved_supply::~solved_supply() = default;
+
+void solved_supply::load_stage()
+{
+    load_ = rail_load(bodies_, lib_, output_, states_.front());
+    stage_ = output_.model;
+    // A ladder draws at its port as many times the current as it lifts the voltage.
+    const double multiple = output_.topology == "boost-multiplier" && output_.rungs.multiple > 0.0 ? output_.rungs.multiple : 1.0;
+    value at_port = load_;
+    for (spread& s : at_port.numbers) {
+        s = scaled(s, multiple);
+    }
+    if (stage_.there()) {
+        stage_.set(stage_model::given::load, at_port, "load");
+    }
+}
 
 const decay_network& solved_supply::after(const off_case& how) const
 {
@@ -154,7 +172,7 @@ void solved_supply::list_accesses()
         item.touchable = a.when != "cover off";
         for (const state in : {state::running, state::no_load, state::standby}) {
             item.voltage[in] = magnitude(at(in).voltage(a.nets[0], a.nets[1]));
-            item.touch_current[in] = magnitude(current_through(bodies_, lib_, output_, in, a.nets[0], a.nets[1], standard_body));
+            item.touch_current[in] = magnitude(touch_current(bodies_, lib_, output_, in, a.nets[0], a.nets[1], standard_body));
         }
         item.discharge_path = soldered_path(off, a.nets[0], a.nets[1]);
         accesses_.push_back(std::move(item));

@@ -82,6 +82,10 @@ public:
     const supply& bodies() const { return bodies_; }
     const library& data() const { return lib_; }
     const rail& output() const { return output_; }
+    /// The stage with its greatest load, at its port; `there` is false for a module.
+    const stage_model& stage() const { return stage_; }
+    /// Current that hangs on the output, none to its most.
+    const value& load() const { return load_; }
     const dc_solution& at(state in) const;
     const std::vector<dc_solution>& states() const { return states_; }
     const std::vector<charged_capacitor>& capacitors() const { return capacitors_; }
@@ -114,12 +118,15 @@ private:
     value stored_fact(const subject& s, const std::string& name) const;
     value access_fact(const subject& s, state in, const std::string& name) const;
     value converter_fact(const std::string& name) const;
+    void load_stage();
     value supply_fact(const std::string& name) const;
 
     supply written_;
     supply bodies_;
     const library& lib_;
     rail output_;
+    stage_model stage_;
+    value load_;
     std::vector<dc_solution> states_;
     std::vector<charged_capacitor> capacitors_;
     std::vector<stored_item> stored_;

@@ -1,7 +1,7 @@
 // How weakly a net is fed, and what a meter's own resistance makes of it.
-#include "circuit/network.hpp"
 #include "stress/part_facts.hpp"
 #include "stress/paths.hpp"
+#include "stress/rail_load.hpp"
 
 #include <algorithm>
 #include <cmath>
@@ -10,10 +10,7 @@ namespace onehand {
 
 namespace {
 
-using form = element_spec::form;
-
 constexpr double usual_meter = 10e6; // ohm, common practice
-constexpr double least_ohms = 1e-3;  // of what is closed
 
 std::vector<element> wired(const solved_supply& s)
 {
@@ -60,47 +57,7 @@ std::set<std::string> weak_nets(const solved_supply& s, const std::vector<std::s
 
 std::optional<double> source_resistance(const solved_supply& s, const std::string& net)
 {
-    const std::set<std::string> stiff = stiff_nets(s);
-    if (stiff.contains(net)) {
-        return 0.0;
-    }
-    const std::vector<element> all = wired(s);
-    const std::set<std::string> near = weak_nets(s, {net});
-    circuit::network n;
-    std::map<std::string, int> node;
-    const auto at = [&](const std::string& name) {
-        return stiff.contains(name) ? 0 : node.emplace(name, static_cast<int>(node.size()) + 1).first->second;
-    };
-    const int self = at(net);
-    bool tied = false;
-    for (const element& e : all) {
-        if (!near.contains(e.from) && !near.contains(e.to) && !near.contains(e.wiper)) {
-            continue;
-        }
-        const auto v = e.values.find(e.wiper.empty() ? form::resistance : form::track);
-        const bool closed = joins_nets(e);
-        if (!closed && (v == e.values.end() || v->second.numbers.empty())) {
-            continue;
-        }
-        const range ohms = closed ? range{least_ohms, least_ohms} : v->second.numbers.front().whole;
-        if (!e.wiper.empty()) {
-            const range travel = e.position.numbers.empty() ? range{0.0, 1.0} : e.position.numbers.front().whole;
-            n.tracks.push_back({at(e.from), at(e.wiper), at(e.to), {ohms.low, ohms.high}, {travel.low, travel.high}});
-            tied = true;
-        } else if (at(e.from) != at(e.to)) {
-            n.branches.push_back({at(e.from), at(e.to), {{circuit::form::resistance, {ohms.low, ohms.high}}}});
-            tied |= at(e.from) == self || at(e.to) == self;
-        }
-    }
-    if (!tied) {
-        return std::nullopt;
-    }
-    const int feed = static_cast<int>(node.size()) + 1;
-    n.branches.push_back({feed, self, {{circuit::form::resistance, {least_ohms, least_ohms}}}});
-    n.sources.push_back({feed, 0, {1.0, 1.0}});
-    n.nodes = feed + 1;
-    const double least = circuit::solve(n).current.back().low;
-    return least > 0.0 ? std::optional(1.0 / least) : std::nullopt;
+    return feeding_resistance(wired(s), stiff_nets(s), net);
 }
 
 meter_error worst_meter_error(const solved_supply& s)

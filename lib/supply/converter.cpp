@@ -19,16 +19,18 @@ public:
         if (!r_.expect(entry_.value, node_kind::table, "a converter is a table: [converter.K1]")) {
             return;
         }
-        c_.fields = r_.fields(entry_.value,
-                              {{"topology", type::choice, {}, {"boost", "flyback", "boost-multiplier", "module"}},
-                               {"output-voltage", type::quantity, dim::voltage, {}},
-                               {"source-resistance", type::quantity, dim::resistance, {}},
-                               {"power-limit", type::quantity, dim::power, {}},
-                               {"internal-capacitance", type::quantity, dim::capacitance, {}},
-                               {"internal-bleeder", type::quantity, dim::resistance, {}},
-                               {"spike", type::quantity, dim::voltage, {}},
-                               {"isolates", type::truth, {}, {}}},
-                              {"input", "inductor", "switch", "rectifier", "outputs", "drive", "feedback", "ladder"}, "[converter." + c_.name + "]");
+        c_.fields =
+            r_.fields(entry_.value,
+                      {{"topology", type::choice, {}, {"boost", "flyback", "boost-multiplier", "module"}},
+                       {"output-voltage", type::quantity, dim::voltage, {}},
+                       {"source-resistance", type::quantity, dim::resistance, {}},
+                       {"power-limit", type::quantity, dim::power, {}},
+                       {"internal-capacitance", type::quantity, dim::capacitance, {}},
+                       {"internal-bleeder", type::quantity, dim::resistance, {}},
+                       {"spike", type::quantity, dim::voltage, {}},
+                       {"overshoot", type::quantity, dim::voltage, {}},
+                       {"isolates", type::truth, {}, {}}},
+                      {"input", "inductor", "switch", "rectifier", "outputs", "drive", "feedback", "ladder", "clamp"}, "[converter." + c_.name + "]");
         if (const auto topology = c_.fields.find("topology"); topology != c_.fields.end()) {
             c_.topology = *topology->second.text();
             c_.fields.erase("topology");
@@ -47,6 +49,7 @@ public:
         }
         read_outputs();
         read_ladder();
+        read_clamp();
         read_drive();
         read_feedback();
         r_.built.stage = std::move(c_);
@@ -123,7 +126,16 @@ private:
         if (e == nullptr || !r_.expect(e->value, node_kind::table, "'drive' is a table in braces")) {
             return;
         }
-        auto f = r_.fields(e->value, {{"frequency", type::quantity, dim::frequency, {}}, {"duty", type::quantity, dim::none, {}, true, 0.0, 1.0}},
+        auto f = r_.fields(e->value,
+                           {{"frequency", type::quantity, dim::frequency, {}},
+                            {"duty", type::quantity, dim::none, {}, true, 0.0, 1.0},
+                            {"high", type::quantity, dim::voltage, {}},
+                            {"low", type::quantity, dim::voltage, {}},
+                            {"supply", type::quantity, dim::voltage, {}},
+                            {"control", type::quantity, dim::voltage, {}},
+                            {"peak-current", type::quantity, dim::current, {}},
+                            {"delay", type::quantity, dim::time, {}},
+                            {"inverted", type::truth, {}, {}}},
                            {"gate", "astable"}, "'drive'");
         if (const auto it = f.find("frequency"); it != f.end()) {
             c_.frequency = it->second;
@@ -139,7 +151,57 @@ private:
             if (c_.frequency) {
                 r_.contradict(astable->key_at, "'astable' computes the frequency from its parts: 'frequency' is written too", c_.frequency->at);
             }
+            if (c_.duty) {
+                r_.contradict(astable->key_at, "'astable' computes the duty from its parts: 'duty' is written too", c_.duty->at);
+            }
         }
+        f.erase("frequency");
+        f.erase("duty");
+        c_.drive = std::move(f);
+        check_drive(*e);
+    }
+
+    /// A peak current without its comparator's delay is no bound, and some keys speak of the timer only.
+    void check_drive(const entry& e)
+    {
+        if (c_.drive.contains("delay") && !c_.drive.contains("peak-current")) {
+            r_.complain(c_.drive.at("delay").at, "'delay' is that of the comparator that ends a cycle at 'peak-current': write both");
+        }
+        for (const char* key : {"control", "inverted", "supply"}) {
+            if (c_.drive.contains(key) && !c_.astable) {
+                r_.complain(c_.drive.at(key).at, std::string("'") + key + "' speaks of a timer: write 'astable' with its parts too");
+            }
+        }
+        if (c_.topology == "module") {
+            r_.complain(e.key_at, "a module's drive is inside it: its output is declared by 'output-voltage'");
+        }
+    }
+
+    void read_clamp()
+    {
+        const entry* e = entry_.value.find("clamp");
+        if (e == nullptr ||
+            !r_.expect(e->value, node_kind::table, "'clamp' is a table in braces: { diode = \"D2\", resistor = \"R5\", capacitor = \"C6\" }")) {
+            return;
+        }
+        switch_clamp k;
+        k.at = e->key_at;
+        const std::pair<const char*, std::string*> keys[] = {
+            {"resistor", &k.resistor}, {"capacitor", &k.capacitor}, {"diode", &k.diode}, {"suppressor", &k.suppressor}};
+        for (const entry& one : e->value.entries) {
+            const auto it = std::find_if(std::begin(keys), std::end(keys), [&](const auto& known) { return one.key == known.first; });
+            if (it == std::end(keys)) {
+                r_.unknown_key(one, {"resistor", "capacitor", "diode", "suppressor"}, "'clamp'");
+            } else {
+                *it->second = part_named(one.value, one.key == "suppressor" ? std::vector<std::string>{"suppressor", "zener"}
+                                                                            : std::vector<std::string>{one.key});
+            }
+        }
+        const bool by_parts = !k.resistor.empty() && !k.capacitor.empty() && !k.diode.empty();
+        if (by_parts == !k.suppressor.empty()) {
+            r_.complain(k.at, "a clamp is 'diode', 'resistor' and 'capacitor', or a 'suppressor' (with or without its 'diode')");
+        }
+        c_.clamp = std::move(k);
     }
 
     void read_astable(const entry& e)
@@ -153,8 +215,15 @@ private:
                 (k.key == "ra" ? a.ra : a.rb) = part_named(k.value, {"resistor"});
             } else if (k.key == "c") {
                 a.c = part_named(k.value, {"capacitor"});
+            } else if (k.key == "bypass") {
+                a.bypass = part_named(k.value, {"diode"});
             } else {
-                r_.unknown_key(k, {"ra", "rb", "c"}, "'astable'");
+                r_.unknown_key(k, {"ra", "rb", "c", "bypass"}, "'astable'");
+            }
+        }
+        for (const auto& [key, ref] : {std::pair("ra", &a.ra), std::pair("rb", &a.rb), std::pair("c", &a.c)}) {
+            if (e.value.find(key) == nullptr && ref->empty()) {
+                r_.complain(e.key_at, std::string("no '") + key + "' in 'astable'");
             }
         }
         c_.astable = a;
@@ -170,8 +239,11 @@ private:
                                 {{"threshold", type::quantity, dim::voltage, {}, false},
                                  {"bias-current", type::quantity, dim::current, {}, false},
                                  {"lag", type::quantity, dim::time, {}},
-                                 {"mode", type::choice, {}, {"gated", "peak-current"}}},
-                                {"net", "against"}, "'feedback'");
+                                 {"mode", type::choice, {}, {"gated", "peak-current", "duty"}}},
+                                {"net", "against", "zener"}, "'feedback'");
+        if (const entry* zener = e->value.find("zener")) {
+            read_zeners(*zener);
+        }
         if (const entry* net = e->value.find("net")) {
             c_.feedback_net = r_.net(net->value);
         } else {
@@ -183,6 +255,20 @@ private:
         }
         if (const auto declared = c_.fields.find("output-voltage"); declared != c_.fields.end()) {
             r_.contradict(e->key_at, "the output is told twice: by 'feedback' and by 'output-voltage'", declared->second.at);
+        }
+    }
+
+    void read_zeners(const entry& e)
+    {
+        if (e.value.kind == node_kind::text) {
+            c_.zeners.push_back(part_named(e.value, {"zener"}));
+            return;
+        }
+        if (!r_.expect(e.value, node_kind::list, "'zener' is a reference or a list of them: [\"Z1\", \"Z2\"]")) {
+            return;
+        }
+        for (const node& n : e.value.items) {
+            c_.zeners.push_back(part_named(n, {"zener"}));
         }
     }
 

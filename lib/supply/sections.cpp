@@ -165,6 +165,8 @@ void read_input(reader& r)
                           {"isolated", type::truth, {}, {}},
                           {"current-limit", type::quantity, dim::current, {}},
                           {"highest-adapter", type::quantity, dim::voltage, {}},
+                          {"source-resistance", type::quantity, dim::resistance, {}},
+                          {"reversible", type::truth, {}, {}},
                           {"feed", type::choice, {}, {"battery", "bench supply", "adapter", "mains"}},
                           {"mains-voltage", type::quantity, dim::voltage, {}},
                           {"overvoltage-category", type::choice, {}, {"I", "II", "III", "IV"}},

@@ -90,6 +90,14 @@ struct input {
 
 struct astable_drive {
     std::string ra, rb, c;
+    std::string bypass; // diode across rb; empty: none
+};
+
+/// What takes the leakage energy of a flyback's primary.
+struct switch_clamp {
+    std::string resistor, capacitor, diode; // resistor and capacitor side by side behind the diode
+    std::string suppressor;                 // in place of those two
+    place at;
 };
 
 struct converter {
@@ -102,6 +110,9 @@ struct converter {
     std::string gate;
     std::optional<field> frequency, duty;
     std::optional<astable_drive> astable;
+    std::map<std::string, field> drive; // high, low, supply, control, peak-current, delay, inverted
+    std::optional<switch_clamp> clamp;
+    std::vector<std::string> zeners; // of the feedback: they conduct where it holds
     std::string feedback_net;
     std::string feedback_return;           // the return net if unsaid
     std::map<std::string, field> feedback; // threshold, bias-current, lag, mode
