@@ -53,6 +53,26 @@ struct set_point_facts {
     std::vector<end> set_by;
 };
 
+/// The converter's figures by name, in the order they are told ("inductor.peak": a name before the point groups).
+struct converter_facts {
+    std::string mode; // continuous | discontinuous | either; empty: unknown
+    std::vector<std::string> mode_missing;
+    struct figure {
+        std::string name;
+        std::string words; // for people
+        value told;
+    };
+    std::vector<figure> figures;
+    struct passed {
+        std::string part, rating;
+        double rail = 0.0;
+        value time;
+    };
+    std::vector<passed> runaway_order;
+    std::vector<std::string> runaway_story;
+    std::string shorted; // what limits a shorted output
+};
+
 struct access_facts {
     access where;
     subject about;
@@ -136,6 +156,7 @@ struct audit_result {
     std::vector<net_facts> nets;
     std::vector<part_facts> parts;
     std::optional<set_point_facts> set_point;
+    std::optional<converter_facts> converter;
     std::vector<access_facts> accesses;
     std::vector<stored_facts> stored;
     std::vector<discharge_facts> discharges;

@@ -56,10 +56,10 @@ std::vector<std::string> cautions_for(const audit_result& r)
 const std::vector<std::string>& not_seen()
 {
     static const std::vector<std::string> list{
-        "the converter's own currents, ringing, saturation and start-up (the switch's spike is as written or assumed)",
-        "what follows a failed part, except where a gap is bridged, a discharge path is missing, a part on the way to what can be touched fails, or "
-        "the rectifier shorts",
-        "what a running supply can push through a person beyond its series resistances (the rail is taken as stiff)",
+        "ringing of switch and rectifier beyond what is written or assumed, switching losses, core losses, winding temperature",
+        "the resistance of wire, fuse and plug in front of the stage, and what a saturated coil does to the currents told",
+        "what follows a failed part, except where a gap is bridged, a discharge path is missing, a part on the way to what can be touched fails, the "
+        "rectifier shorts, or feedback is lost",
         "recovery of a capacitor by dielectric absorption after a short", "anything on the mains side"};
     return list;
 }
@@ -92,6 +92,7 @@ audit_result gather(const supply& s, const session& opened, const std::vector<st
     r.nets = net_section(solved);
     r.parts = part_section(solved);
     r.set_point = set_point_section(solved);
+    r.converter = converter_section(solved);
     r.accesses = access_section(solved, r.judged);
     r.stored = stored_section(solved, r.judged);
     r.discharges = discharge_section(solved, *opened.rules, r.judged, sets);

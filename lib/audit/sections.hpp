@@ -8,6 +8,7 @@ namespace onehand {
 std::vector<net_facts> net_section(const solved_supply& s);
 std::vector<part_facts> part_section(const solved_supply& s);
 std::optional<set_point_facts> set_point_section(const solved_supply& s);
+std::optional<converter_facts> converter_section(const solved_supply& s);
 std::vector<access_facts> access_section(const solved_supply& s, const judgement& judged);
 std::vector<stored_facts> stored_section(const solved_supply& s, const judgement& judged);
 /// Every accessible pair in every case of switch-off, against 60 V and against every time that a rule in force asks of the pair.

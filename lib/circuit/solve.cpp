@@ -283,7 +283,9 @@ private:
 
 } // namespace
 
-solution solve(const network& n)
+namespace {
+
+solution solve_tracks(const network& n)
 {
     reduced r = reduce(n);
     if (r.unheld.empty()) {
@@ -308,6 +310,71 @@ solution solve(const network& n)
     solution out = answers(hung, again).run();
     out.current.resize(n.branches.size());
     out.power.resize(n.branches.size());
+    return out;
+}
+
+/// A track whose wiper is tied to one of its ends is one resistance: what the other end sees of it.
+struct untied {
+    network net;
+    std::vector<int> track_at;  // per track of the original: its number here, or -1
+    std::vector<int> branch_at; // per track of the original: the branch it has become, or -1
+};
+
+untied without_tied_tracks(const network& n)
+{
+    untied u;
+    u.net = n;
+    u.net.tracks.clear();
+    for (const track& t : n.tracks) {
+        const bool at_end_1 = t.wiper == t.end_1;
+        const bool tied = at_end_1 != (t.wiper == t.end_2);
+        u.track_at.push_back(tied ? -1 : static_cast<int>(u.net.tracks.size()));
+        u.branch_at.push_back(tied ? static_cast<int>(u.net.branches.size()) : -1);
+        if (!tied) {
+            u.net.tracks.push_back(t);
+            continue;
+        }
+        const box share = at_end_1 ? box{1.0 - t.position.high, 1.0 - t.position.low} : t.position;
+        u.net.branches.push_back({t.end_1, t.end_2, {{form::resistance, {t.resistance.low * share.low, t.resistance.high * share.high}}}});
+    }
+    return u;
+}
+
+} // namespace
+
+solution solve(const network& n)
+{
+    const untied u = without_tied_tracks(n);
+    if (u.net.tracks.size() == n.tracks.size()) {
+        return solve_tracks(n);
+    }
+    const solution inner = solve_tracks(u.net);
+    solution out = inner;
+    out.current.resize(n.branches.size());
+    out.power.resize(n.branches.size());
+    out.track_current.assign(n.tracks.size(), {});
+    out.track_power.assign(n.tracks.size(), {});
+    for (std::size_t i = 0; i < n.tracks.size(); ++i) {
+        if (const int b = u.branch_at[i]; b >= 0 && !inner.current.empty()) {
+            const extreme& amps = inner.current[at(b)];
+            out.track_current[i] = {0.0, std::max(std::abs(amps.low), std::abs(amps.high)), amps.known, amps.searched, amps.margin};
+            out.track_power[i] = inner.power[at(b)];
+        } else if (!inner.track_current.empty()) {
+            out.track_current[i] = inner.track_current[at(u.track_at[i])];
+            out.track_power[i] = inner.track_power[at(u.track_at[i])];
+        }
+    }
+    for (output_end& e : out.set_by) {
+        for (std::size_t i = 0; i < n.tracks.size(); ++i) {
+            const bool became = e.what == output_end::of::branch && e.index == u.branch_at[i];
+            const bool kept = (e.what == output_end::of::track || e.what == output_end::of::track_position) && e.index == u.track_at[i];
+            if (became || kept) {
+                e.what = became ? output_end::of::track_position : e.what;
+                e.index = static_cast<int>(i);
+                break;
+            }
+        }
+    }
     return out;
 }
 

@@ -20,7 +20,7 @@ std::string unit_of(const dimension& d)
     static const row rows[] = {{dim::voltage, "V"},    {dim::current, "A"}, {dim::resistance, "ohm"}, {dim::capacitance, "F"},
                                {dim::inductance, "H"}, {dim::time, "s"},    {dim::frequency, "Hz"},   {dim::power, "W"},
                                {dim::energy, "J"},     {dim::charge, "C"},  {dim::length, "m"},       {dim::temperature, "K"},
-                               {dim::none, "1"}};
+                               {dim::none, "1"},       {dim::melting_integral, "A2s"}};
     for (const row& r : rows) {
         if (r.dim == d) {
             return r.unit;
@@ -254,6 +254,27 @@ void add_nets_and_parts(json& j, const audit_result& r)
     }
 }
 
+void add_stage(json& j, const converter_facts& c)
+{
+    if (!c.mode.empty() || !c.mode_missing.empty()) {
+        j["mode"] = c.mode.empty() ? json{{"missing", c.mode_missing}} : json(c.mode);
+    }
+    for (const converter_facts::figure& f : c.figures) {
+        const std::size_t point = f.name.find('.');
+        json& group = point == std::string::npos ? j : j[f.name.substr(0, point)];
+        group[point == std::string::npos ? f.name : f.name.substr(point + 1)] = of_value(f.told);
+    }
+    if (!c.runaway_story.empty()) {
+        json& away = j["runaway"];
+        away["story"] = c.runaway_story;
+        away["passes"] = json::array();
+        for (const converter_facts::passed& p : c.runaway_order) {
+            away["passes"].push_back({{"part", p.part}, {"rating", p.rating}, {"rail", p.rail}, {"time", of_value(p.time)}});
+        }
+    }
+    j["shorted"] = c.shorted;
+}
+
 void add_converter(json& j, const audit_result& r)
 {
     if (!r.set_point) {
@@ -266,6 +287,9 @@ void add_converter(json& j, const audit_result& r)
         point["set-by"].push_back({{"part", e.part}, {"at-low", e.at_low}, {"at-high", e.at_high}});
     }
     j["converter"] = {{"set-point", point}};
+    if (r.converter) {
+        add_stage(j["converter"], *r.converter);
+    }
 }
 
 void add_access_and_stored(json& j, const audit_result& r)

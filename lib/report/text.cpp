@@ -24,6 +24,7 @@ public:
         stored();
         discharges();
         set_point();
+        stage();
         spacings();
         if (o_.show_working) {
             nets();
@@ -356,6 +357,34 @@ private:
         }
         if (o_.show_working) {
             working(r_.set_point->output.shown);
+        }
+    }
+
+    void stage()
+    {
+        if (!r_.converter) {
+            return;
+        }
+        const converter_facts& c = *r_.converter;
+        title("Converter, at its worst");
+        if (!c.mode.empty() || !c.mode_missing.empty()) {
+            line("  " + padded("coil current", 34) + (c.mode.empty() ? "mode unknown: needs " + listed(c.mode_missing) : c.mode));
+        }
+        for (const converter_facts::figure& f : c.figures) {
+            if (f.told.numbers.empty() && f.told.missing.empty()) {
+                continue;
+            }
+            item("  " + padded(f.words, 34), f.told.numbers.empty() ? "unknown: needs " + listed(f.told.missing) : figure(f.told));
+            if (o_.show_working) {
+                working(f.told.shown);
+            }
+        }
+        item("  " + padded("output shorted, what limits it", 34), c.shorted);
+        if (!c.runaway_story.empty()) {
+            line("  with feedback lost:");
+        }
+        for (const std::string& l : c.runaway_story) {
+            item("    - ", l);
         }
     }
 

@@ -85,7 +85,8 @@ void add_stage_parts(std::vector<fact_spec>& list)
     list.push_back(solved("capacitor", "runaway-voltage", dim::voltage, "its voltage when feedback is lost"));
     list.push_back(told("capacitor", "hot-plug-voltage", dim::voltage, "twice the input"));
     list.push_back(told("capacitor", "adapter-voltage", dim::voltage, "highest adapter whose plug fits"));
-    list.push_back(told("capacitor", "reversed-voltage", dim::voltage, "against its marking with the input reversed; 0 V if it is not straight on it"));
+    list.push_back(
+        told("capacitor", "reversed-voltage", dim::voltage, "against its marking with the input reversed; 0 V if it is not straight on it"));
     list.push_back(truth("capacitor", "input-reversible", "the input can be connected the wrong way round, as written"));
     list.push_back(solved("fuse", "inrush-integral", {{0, 0, 1, 2, 0}}, "I2t of switching on with everything empty"));
     list.push_back(told("fuse", "short-current", dim::current, "what flows with the switch held on: coil and switch, or what the input delivers"));

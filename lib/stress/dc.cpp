@@ -77,6 +77,18 @@ private:
             held.insert(whole_.net.held->plus);
             held.insert(whole_.net.held->minus);
         }
+        // What a fuse, a wire or a coil makes one with a held net is held too.
+        for (bool grew = true; grew;) {
+            grew = false;
+            for (const element& e : whole_.elements) {
+                const int from = whole_.node.at(e.from);
+                const int to = whole_.node.at(e.to);
+                if (joins_nets(e) && held.contains(from) != held.contains(to)) {
+                    held.insert({from, to});
+                    grew = true;
+                }
+            }
+        }
         held_ = held;
         for (bool grew = true; grew;) {
             grew = false;

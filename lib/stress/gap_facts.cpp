@@ -33,15 +33,6 @@ value least_distance(const value& clearance, const value& creepage)
     return v;
 }
 
-/// Unknown until a drive tells it.
-value switching_frequency(const supply& s)
-{
-    if (!s.stage) {
-        return missing_value(value::type::number, {"converter.drive"});
-    }
-    return written_value(s.stage->frequency, value::type::number, s.stage->name + ".drive.frequency");
-}
-
 } // namespace
 
 value solved_supply::gap_fact(const subject& s, const std::string& name) const
@@ -95,7 +86,7 @@ value solved_supply::gap_fact(const subject& s, const std::string& name) const
         return least_groove(site);
     }
     if (name == "switching-frequency") {
-        return switching_frequency(written_);
+        return bodies_.stage ? converter_fact("frequency") : missing_value(value::type::number, {"converter.drive"});
     }
     if (name == "pollution-degree") {
         return written_value(bodies_.used.pollution_degree, value::type::number, "use.pollution-degree");

@@ -43,6 +43,14 @@ bool puts_voltage_on_touchable(const dc_solution& before, const dc_solution& aft
     });
 }
 
+/// Moves with every cycle: the switch node, the secondary's live end, a coupling net of a ladder.
+bool swings(const rail& r, const std::string& net)
+{
+    const auto rung = r.rungs.nets.find(net);
+    const bool coupled = rung != r.rungs.nets.end() && rung->second.moving;
+    return !net.empty() && (net == r.switch_net || net == r.secondary_net || coupled);
+}
+
 } // namespace
 
 void solved_supply::list_gaps()
@@ -68,7 +76,7 @@ void solved_supply::list_gaps()
             item.voltage =
                 v != nullptr ? *v
                              : hull(magnitude(at(state::running).voltage(g.nets[0], other)), magnitude(at(state::no_load).voltage(g.nets[0], other)));
-            item.switches = !output_.switch_net.empty() && (g.nets[0] == output_.switch_net || other == output_.switch_net);
+            item.switches = swings(output_, g.nets[0]) || swings(output_, other);
             item.person_side = touchable.contains(g.nets[0]) != touchable.contains(other);
             item.about = {"gap", gap_name(g, item.insulation, floor), {g.nets[0], other}, g.at};
             const auto same = std::find_if(found.begin(), found.end(), [&](const gap_item& i) { return i.insulation == item.insulation; });

@@ -110,7 +110,12 @@ std::set<std::string> sense_nets(const supply& s, const library& lib, const rail
     ends.insert(s.return_net);
     ends.insert(s.fed.nets.begin(), s.fed.nets.end());
     const std::vector<element> all = wire(s, lib, state::no_load, output.stage_parts);
-    std::set<std::string> chain{s.stage->feedback_net};
+    std::set<std::string> chain;
+    for (const std::string& net : {s.stage->feedback_net, s.stage->feedback_return}) {
+        if (!ends.contains(net)) {
+            chain.insert(net);
+        }
+    }
     for (bool grew = true; grew;) {
         grew = false;
         for (const element& e : all) {

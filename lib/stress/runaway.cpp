@@ -1,6 +1,7 @@
 // Feedback lost: how soon, what gives first, what it holds then.
 #include "physics/storage.hpp"
 #include "physics/surge.hpp"
+#include "quantity/text.hpp"
 #include "stress/spread_math.hpp"
 #include "stress/stage_facts.hpp"
 #include "stress/stage_rail.hpp"
@@ -140,6 +141,79 @@ value runaway_share(const solved_supply& s, const part& p)
     }
     v.shown.formula = "its voltage, raised as the rail is when feedback is lost";
     return v;
+}
+
+namespace {
+
+std::string volts_of(double v)
+{
+    return format_quantity({v, dim::voltage}, 3);
+}
+
+/// Whether the switch's package bears the stage's whole power in breakdown; nothing where that is not told.
+std::optional<bool> bears_breakdown(const solved_supply& s)
+{
+    const part* q = s.bodies().find_part(s.bodies().stage->power_switch);
+    const auto number_of = [&](const char* name) { return q == nullptr || q->find(name) == nullptr ? nullptr : q->find(name)->number(); };
+    const spread* rth = number_of("thermal-resistance");
+    const spread* limit = number_of("junction-limit");
+    const value air = inside_temperature(s.bodies().used);
+    std::vector<given> needs = s.stage().cycle();
+    needs.insert(needs.end(), {given::in, given::inductance});
+    const auto power = s.stage().plain(needs, [](const view& v) { return physics::full_power(v.stage).value(); });
+    if (rth == nullptr || limit == nullptr || air.numbers.empty() || !power) {
+        return std::nullopt;
+    }
+    return air.numbers.front().whole.high + power->high * rth->whole.high <= limit->whole.low;
+}
+
+} // namespace
+
+std::vector<std::string> runaway_story(const solved_supply& s)
+{
+    std::vector<std::string> lines;
+    const rail& r = s.output();
+    const auto end = highest(r.runaway);
+    if (!end || !s.stage().there()) {
+        return lines;
+    }
+    for (const exceeded& x : runaway_order(s)) {
+        const std::string when = x.time.numbers.empty() ? "" : ", " + format_quantity({x.time.numbers.front().whole.low, dim::time}, 2) + " after";
+        lines.push_back(x.ref + " passes its " + x.what + " at " + volts_of(x.rail) + when);
+    }
+    lines.push_back("it ends by " + volts_of(*end) + ": " + r.runaway_ends);
+    if (r.runaway_ends.find("breaks down") != std::string::npos) {
+        const auto bears = bears_breakdown(s);
+        const std::string& q = s.bodies().stage->power_switch;
+        if (bears && *bears) {
+            lines.push_back(q + " bears the stage's power in breakdown: the rail stays there while the input is on");
+        } else {
+            lines.push_back(q + " may fail shorted: the input then feeds coil and switch until something opens, and the rail keeps its charge");
+            lines.push_back(q + " may fail open: pumping ends, and the rail keeps its charge");
+        }
+    }
+    const value energy = runaway_energy(s);
+    if (const auto joules = highest(energy)) {
+        lines.push_back("then stored: up to " + format_quantity({*joules, dim::energy}, 3));
+    }
+    return lines;
+}
+
+std::string short_story(const solved_supply& s)
+{
+    const std::string& topology = s.output().topology;
+    const supply& b = s.bodies();
+    if (topology == "boost" || topology == "boost-multiplier") {
+        return topology == "boost" ? "nothing in the stage: coil and rectifier lead straight from the input; fuse and source limit it"
+                                   : "coil and ladder diodes lead from the input where no capacitor stands between; fuse and source limit it";
+    }
+    if (topology == "flyback") {
+        const auto watts = highest(*stage_fact(s, "available-power"));
+        return "the stage's own power" + (watts ? ", up to " + format_quantity({*watts, dim::power}, 3) : std::string(", not known"));
+    }
+    const field* limit = b.stage ? b.stage->find("power-limit") : nullptr;
+    const field* inner = b.stage ? b.stage->find("source-resistance") : nullptr;
+    return limit != nullptr || inner != nullptr ? "the module, as declared" : "not known: what is inside the module";
 }
 
 } // namespace onehand

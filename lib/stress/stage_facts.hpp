@@ -41,5 +41,9 @@ value runaway_energy(const solved_supply& s);
 value runaway_share(const solved_supply& s, const part& p);
 /// Ratings that a runaway passes, in the order it passes them.
 std::vector<exceeded> runaway_order(const solved_supply& s);
+/// The same in words, with what ends it and what may follow; empty where nothing is known of it.
+std::vector<std::string> runaway_story(const solved_supply& s);
+/// What limits the current of a shorted output, in words.
+std::string short_story(const solved_supply& s);
 
 } // namespace onehand

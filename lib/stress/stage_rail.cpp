@@ -120,7 +120,7 @@ void find_port(const supply& s, const library& lib, rail& r)
 // --- start-up ---------------------------------------------------------------------------------------------------------------------------------
 
 struct pumping {
-    value power, energy, slack, least_port, period;
+    value power, most, energy, slack, period;
 };
 
 pumping pumping_of(const rail& r)
@@ -130,6 +130,7 @@ pumping pumping_of(const rail& r)
     pumping p;
     p.power = m.figure("L i^2/(2 T)", dim::power, cycle, [](const view& v) { return physics::full_power(v.stage).value(); });
     p.energy = m.figure("L i^2/2", dim::energy, cycle, [](const view& v) { return physics::full_energy(v.stage).value(); });
+    p.most = m.figure("Uin i", dim::power, cycle, [](const view& v) { return (v.stage.in * physics::full_peak(v.stage)).value(); });
     p.period = m.figure("T", dim::time, m.cycle(), [](const view& v) { return v.stage.period.value(); });
     auto all = cycle;
     all.insert(all.end(), {given::out, given::drop, given::turns});
@@ -162,7 +163,9 @@ void find_start_up(const supply& s, const library& lib, rail& r)
             inherit(r.overshoot, *v);
             r.overshoot.shown.inputs.insert(r.overshoot.shown.inputs.end(), v->shown.inputs.begin(), v->shown.inputs.end());
         }
-        if (r.overshoot.missing.empty() && !(p.slack.numbers.front().whole.low >= 0.0)) {
+        // A comparator that ends each cycle bounds the power where cycles run into each other too.
+        const bool run_together = r.overshoot.missing.empty() && !(p.slack.numbers.front().whole.low >= 0.0);
+        if (run_together && !r.model.limited()) {
             r.overshoot.missing.push_back(c.name + ".overshoot, measured: full cycles run into each other at the set point");
         }
         const double multiple = r.topology == "boost-multiplier" ? r.rungs.multiple : 1.0;
