@@ -58,10 +58,22 @@ const std::vector<std::string>& not_seen()
     static const std::vector<std::string> list{
         "ringing of switch and rectifier beyond what is written or assumed, switching losses, core losses, winding temperature",
         "the resistance of wire, fuse and plug in front of the stage, and what a saturated coil does to the currents told",
+        "what a module draws when it is switched on, and where it goes when its own feedback fails",
         "what follows a failed part, except where a gap is bridged, a discharge path is missing, a part on the way to what can be touched fails, the "
         "rectifier shorts, or feedback is lost",
-        "recovery of a capacitor by dielectric absorption after a short", "anything on the mains side"};
+        "recovery of a capacitor by dielectric absorption after a short",
+        "anything on the mains side"};
     return list;
+}
+
+/// As built; with feedback lost or a wiper open; with the input reversed, plugged in live or fed by the highest adapter that fits. What the latter
+/// two need are facts of the supply as it stands.
+judgement judged_under_changes(const solved_supply& solved, const session& opened, const std::vector<std::string>& sets)
+{
+    const auto under = [&](const char* changed, const char* kind) {
+        return judge(*opened.rules, opened.lib, solved.subjects(), solved, {sets}, changed, kind);
+    };
+    return together(together(under("none", "none"), under("one fault of the feedback", "single-fault")), under("input event", "input-event"));
 }
 
 } // namespace
@@ -87,7 +99,7 @@ audit_result gather(const supply& s, const session& opened, const std::vector<st
     r.rules_stamp = opened.stamp;
     r.limit_sets = sets;
     r.left_out = left_out(s, opened.lib, sets);
-    r.judged = judge(*opened.rules, opened.lib, solved.subjects(), solved, {sets});
+    r.judged = judged_under_changes(solved, opened, sets);
     r.loosened = r.judged.loosened;
     r.nets = net_section(solved);
     r.parts = part_section(solved);

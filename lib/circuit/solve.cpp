@@ -369,6 +369,12 @@ solution solve(const network& n)
             const bool became = e.what == output_end::of::branch && e.index == u.branch_at[i];
             const bool kept = (e.what == output_end::of::track || e.what == output_end::of::track_position) && e.index == u.track_at[i];
             if (became || kept) {
+                // Tied to its first end the resistance falls as the wiper moves on.
+                if (became && n.tracks[i].wiper == n.tracks[i].end_1) {
+                    const auto turned = [](char c) { return c == 'l' ? 'h' : c == 'h' ? 'l' : c; };
+                    e.at_low = turned(e.at_low);
+                    e.at_high = turned(e.at_high);
+                }
                 e.what = became ? output_end::of::track_position : e.what;
                 e.index = static_cast<int>(i);
                 break;

@@ -385,6 +385,18 @@ judgement judge(const rule_set& rules, const library& lib, const std::vector<sub
     return out;
 }
 
+judgement together(judgement a, judgement b)
+{
+    std::move(b.findings.begin(), b.findings.end(), std::back_inserter(a.findings));
+    for (std::string& line : b.loosened) {
+        if (std::find(a.loosened.begin(), a.loosened.end(), line) == a.loosened.end()) {
+            a.loosened.push_back(std::move(line));
+        }
+    }
+    std::stable_sort(a.findings.begin(), a.findings.end(), graver);
+    return a;
+}
+
 std::vector<rule_view> view_rules(const rule_set& rules, const library& lib)
 {
     static_cast<void>(lib);

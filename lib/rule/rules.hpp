@@ -39,6 +39,9 @@ struct judgement {
 judgement judge(const rule_set& rules, const library& lib, const std::vector<subject>& subjects, const fact_source& facts,
                 const judging_options& options, const std::string& changed = "none", const std::string& change_kind = "none");
 
+/// The findings of both in one order; classes are those of the first.
+judgement together(judgement a, judgement b);
+
 /// Design section 3. `unattested` are the lines for what the description does not attest as complete.
 conclusions conclude(const std::vector<finding>& findings, bool waiting_time_known);
 

@@ -2,6 +2,7 @@
 #include "stress/items.hpp"
 #include "stress/part_facts.hpp"
 #include "stress/solved.hpp"
+#include "stress/spread_math.hpp"
 #include "stress/stage_facts.hpp"
 
 #include <algorithm>
@@ -72,13 +73,17 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
         return *v;
     }
     const auto found = at(in).bodies.find(s.name);
-    if (name == "peak-voltage") {
+    const bool stage_switch = bodies_.stage && (p->ref == bodies_.stage->power_switch || p->ref.starts_with(bodies_.stage->power_switch + "/"));
+    if (name == "peak-voltage" && stage_switch) {
         return output_.peak;
     }
     if (found != at(in).bodies.end()) {
         const body_solution& b = found->second;
         if (name == "voltage") {
             return b.voltage;
+        }
+        if (name == "peak-voltage") {
+            return magnitude(b.voltage); // no switch of the stage: what stands across it
         }
         if (name == "current") {
             return b.current;

@@ -88,6 +88,9 @@ void add_stage_parts(std::vector<fact_spec>& list)
     list.push_back(
         told("capacitor", "reversed-voltage", dim::voltage, "against its marking with the input reversed; 0 V if it is not straight on it"));
     list.push_back(truth("capacitor", "input-reversible", "the input can be connected the wrong way round, as written"));
+    for (const char* s : {"capacitor", "fuse"}) {
+        list.push_back(truth(s, "own-stage", "the converter's stage is described part by part, not a module"));
+    }
     list.push_back(solved("fuse", "inrush-integral", {{0, 0, 1, 2, 0}}, "I2t of switching on with everything empty"));
     list.push_back(told("fuse", "short-current", dim::current, "what flows with the switch held on: coil and switch, or what the input delivers"));
     list.push_back(truth("fuse", "in-input", "it stands in the input path"));

@@ -24,6 +24,25 @@ double declared(const supply& s, const char* key, bool high)
     return high ? f->number()->whole.high : f->number()->whole.low;
 }
 
+/// Drop of a ladder's peak for each ampere, at its least: greatest capacitances, highest frequency; nothing where its form is not known.
+double ladder_impedance(const supply& s, const rail& r)
+{
+    std::vector<farad> caps;
+    for (const std::string& ref : r.rungs.chain) {
+        const part* p = s.find_part(ref);
+        const field* f = p == nullptr ? nullptr : p->find("value");
+        if (f == nullptr || f->number() == nullptr || !f->number()->whole.bounded()) {
+            return 0.0;
+        }
+        caps.push_back(farad::from_value(f->number()->whole.high));
+    }
+    const auto hertz = r.model.plain(r.model.cycle(), [](const view& v) { return interval(1.0) / v.stage.period.value(); });
+    if (caps.empty() || !hertz || !std::isfinite(hertz->high) || r.topology != "boost-multiplier") {
+        return 0.0;
+    }
+    return physics::loaded(caps, r.rungs.form, ampere::from_value(1.0), hertz::from_value(hertz->high)).drop.value();
+}
+
 /// Greatest output voltage across a resistance: the set point, or what the power holds up.
 std::optional<double> greatest_across(const supply& s, const rail& r, double ohms)
 {
@@ -40,13 +59,15 @@ std::optional<double> greatest_across(const supply& s, const rail& r, double ohm
     const double multiple = r.topology == "boost-multiplier" ? r.rungs.multiple : 1.0;
     std::vector<given> needs = r.model.cycle();
     needs.insert(needs.end(), {given::in, given::inductance, given::turns});
-    const double at_port = ohms / (multiple * multiple);
+    // A ladder's own impedance stands in the way, at its least: the feedback meanwhile drives its port as far as the power goes.
+    const double inner = ladder_impedance(s, r);
+    const double at_port = (ohms + inner) / (multiple * multiple);
     const auto reached = r.model.plain(
         needs, [at_port](const view& v) { return physics::open_loop(v.stage, physics::ohms<interval>::from_value(interval(at_port))).value(); });
     if (!reached || !(multiple > 0.0)) {
         return top; // nothing known of the stage: as stiff as its set point
     }
-    return std::min(*top, reached->high * multiple);
+    return std::min(*top, reached->high * multiple * ohms / (ohms + inner));
 }
 
 } // namespace

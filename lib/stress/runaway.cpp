@@ -98,7 +98,10 @@ std::vector<exceeded> runaway_order(const solved_supply& s)
             }
         }
     }
-    std::stable_sort(list.begin(), list.end(), [](const exceeded& a, const exceeded& b) { return a.rail < b.rail; });
+    std::stable_sort(list.begin(), list.end(), [](const exceeded& a, const exceeded& b) {
+        const bool alike = std::abs(a.rail - b.rail) <= 1e-9 * b.rail;
+        return alike ? natural_less(a.ref, b.ref) : a.rail < b.rail;
+    });
     return list;
 }
 
@@ -177,9 +180,18 @@ std::vector<std::string> runaway_story(const solved_supply& s)
     if (!end || !s.stage().there()) {
         return lines;
     }
-    for (const exceeded& x : runaway_order(s)) {
-        const std::string when = x.time.numbers.empty() ? "" : ", " + format_quantity({x.time.numbers.front().whole.low, dim::time}, 2) + " after";
-        lines.push_back(x.ref + " passes its " + x.what + " at " + volts_of(x.rail) + when);
+    // What gives at the same voltage stands in one line.
+    const std::vector<exceeded> order = runaway_order(s);
+    for (std::size_t i = 0; i < order.size();) {
+        std::string names = order[i].ref;
+        std::size_t next = i + 1;
+        for (; next < order.size() && order[next].what == order[i].what && order[next].rail <= order[i].rail * (1.0 + 1e-9); ++next) {
+            names += ", " + order[next].ref;
+        }
+        const value& t = order[i].time;
+        const std::string when = t.numbers.empty() ? "" : ", " + format_quantity({t.numbers.front().whole.low, dim::time}, 3) + " after";
+        lines.push_back("at " + volts_of(order[i].rail) + when + ": " + order[i].what + " of " + names);
+        i = next;
     }
     lines.push_back("it ends by " + volts_of(*end) + ": " + r.runaway_ends);
     if (r.runaway_ends.find("breaks down") != std::string::npos) {

@@ -299,6 +299,9 @@ std::optional<value> of_capacitor(const solved_supply& s, const part& p, const s
     if (name == "on-input") {
         return truth_of(on_input(s, p) || turned_on_input(s, p));
     }
+    if (name == "own-stage") {
+        return truth_of(s.stage().there());
+    }
     if (name == "at-output") {
         return truth_of(across_output(s, p) && s.stage().there());
     }
@@ -367,6 +370,9 @@ std::optional<value> stage_part_fact(const solved_supply& s, const part& p, cons
     }
     if (p.kind == "capacitor") {
         return of_capacitor(s, p, name);
+    }
+    if (name == "own-stage") {
+        return truth_of(s.stage().there());
     }
     if (p.kind == "fuse" && name == "inrush-integral") {
         return inrush_integral(s);
