@@ -33,6 +33,13 @@ N kept_by_losses(const stage<N>& s)
     return loss_share(((s.coil + s.on_resistance) * s.on / s.inductance).value());
 }
 
+/// out + drop of a boost stage, in which the input cancels.
+template<class N>
+volts<N> reset_and_input(const stage<N>& s)
+{
+    return s.is == shape::boost ? s.out + s.drop : reset_voltage(s) + s.in;
+}
+
 template<class N>
 N on_share(const stage<N>& s)
 {
@@ -214,6 +221,29 @@ effective<N> effective_full(const stage<N>& s)
 }
 
 template<class N>
+effective<N> effective_paced(const stage<N>& s)
+{
+    // On-time over inductance: the peak over the input.
+    const N slope = s.limited ? (s.limit / s.in).value() + (s.delay / s.inductance).value() : (s.on / s.inductance).value();
+    const N scale = s.load.value() * slope * N(2.0 / 3.0);
+    const auto of = [&](const volts<N>& v, const N& turns) { return amperes<N>::from_value(root(scale * v.value() * turns)); };
+    const effective<N> full = effective_full(s);
+    const auto least_of = [](const amperes<N>& a, const amperes<N>& b) { return amperes<N>::from_value(lesser_of(a.value(), b.value())); };
+    const volts<N> reset = reset_voltage(s);
+    return {least_of(of(reset_and_input(s), s.turns), full.coil), least_of(of(reset, s.turns), full.power_switch),
+            least_of(of(s.in, N(1.0) / s.turns), full.rectifier)};
+}
+
+template<class N>
+amperes<N> average_paced(const stage<N>& s)
+{
+    const amperes<N> asked = s.load * (s.turns * (N(1.0) + (reset_voltage(s) / s.in).value()));
+    const N share = s.limited ? N(1.0) - at_least(slack(s), 0.0) : s.duty * (N(1.0) + (s.in / reset_voltage(s)).value());
+    const amperes<N> full = full_peak(s) * share * half<N>();
+    return amperes<N>::from_value(lesser_of(asked.value(), full.value()));
+}
+
+template<class N>
 effective<N> effective_regulated(const stage<N>& s)
 {
     const auto triangles = [&] {
@@ -323,6 +353,8 @@ joules<N> avalanche_energy(const joules<N>& held, const volts<N>& breakdown, con
     template amperes<N> full_current(const stage<N>&);                                                                                               \
     template amperes<N> most_load(const stage<N>&);                                                                                                  \
     template effective<N> effective_full(const stage<N>&);                                                                                           \
+    template effective<N> effective_paced(const stage<N>&);                                                                                          \
+    template amperes<N> average_paced(const stage<N>&);                                                                                              \
     template effective<N> effective_regulated(const stage<N>&);                                                                                      \
     template volts<N> output_ripple(const stage<N>&, const amperes<N>&, const farads<N>&);                                                           \
     template volts<N> open_loop(const stage<N>&, const ohms<N>&);                                                                                    \

@@ -96,6 +96,12 @@ template<class N>
 effective<N> effective_full(const stage<N>& s);
 template<class N>
 effective<N> effective_regulated(const stage<N>& s);
+/// Full discontinuous cycles as often as the load asks: of the inductance 2 load on turns (reset + in)/(3 L), and so on, squared; no more than full
+/// cycles without a pause. The average of the inductance: load turns (reset + in)/in.
+template<class N>
+effective<N> effective_paced(const stage<N>& s);
+template<class N>
+amperes<N> average_paced(const stage<N>& s);
 
 /// Output over its own average: peak to peak on an ideal capacitor. Discontinuous: (i/turns - load)^2 L turns^2/(2 reset turns C) of the charge above
 /// the load; continuous: load D T/C.

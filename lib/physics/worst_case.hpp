@@ -17,6 +17,6 @@ struct span_of {
 using on_intervals = std::function<interval(std::span<const interval>)>;
 
 /// `closeness`: how far, relative to the greatest magnitude, a bound may stand from a value that is taken. Boxes may reach to infinity.
-span_of extremes(const on_intervals& form, const std::vector<span_of>& box, double closeness = 1e-6);
+span_of extremes(const on_intervals& form, const std::vector<span_of>& box, double closeness = 1e-5);
 
 } // namespace onehand::physics

@@ -32,7 +32,7 @@ public:
     {
         for (const auto& [net, node] : whole_.node) {
             out_.nets.push_back(net);
-            if (floats(node)) {
+            if (floats(node) && !by_ladder(net)) {
                 out_.floating.insert(net);
             }
         }
@@ -189,8 +189,16 @@ private:
         return nodes;
     }
 
+    /// A net of the ladder that nothing else touches is told by the ladder.
+    bool by_ladder(const std::string& net) const { return out_.in != state::standby && rail_.rungs.alone(s_, net); }
+
     value potential(const std::string& net, int node) const
     {
+        if (const auto units = rail_.rungs.between(net, s_.return_net); units && by_ladder(net)) {
+            value told = hull(in_units(port(), units->low, ""), in_units(port(), units->high, ""));
+            told.shown.formula = "V(" + net + "), unloaded ladder";
+            return told;
+        }
         value v = raw(node, 0);
         if (floats(node)) {
             for (const int other : touched(net)) {
@@ -215,7 +223,7 @@ private:
         const auto units = held(a) && held(b) ? std::nullopt : rail_.rungs.between(a, b);
         if (units && out_.in != state::standby && !rail_.port.numbers.empty()) {
             // Both hang on the same ladder: they move together.
-            v = hull(in_units(rail_.port, units->low, ""), in_units(rail_.port, units->high, ""));
+            v = hull(in_units(port(), units->low, ""), in_units(port(), units->high, ""));
             v.shown.formula = "V(" + a + ") - V(" + b + "), unloaded ladder";
             return v;
         }
@@ -400,14 +408,15 @@ private:
             }
             return;
         }
-        const value port = out_.in == state::start_up ? lifted_port() : rail_.port;
         for (const ladder::stressed& c : l.capacitors) {
-            out_.bodies[c.ref].voltage = in_units(port, c.voltage, "its share of the ladder");
+            out_.bodies[c.ref].voltage = in_units(port(), c.voltage, "its share of the ladder");
         }
         for (const ladder::stressed& d : l.diodes) {
-            out_.bodies[d.ref].voltage = in_units(port, -d.voltage, "blocks its step of the ladder");
+            out_.bodies[d.ref].voltage = in_units(port(), -d.voltage, "blocks its step of the ladder");
         }
     }
+
+    value port() const { return out_.in == state::start_up ? lifted_port() : rail_.port; }
 
     value lifted_port() const
     {

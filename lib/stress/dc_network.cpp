@@ -84,7 +84,7 @@ private:
         if (in_ == state::standby) {
             hold(rail_.positive, rail_.negative, rail_.standby, "output in standby");
         } else if (in_ == state::start_up) {
-            hold(rail_.positive, rail_.negative, from_nothing(rail_.start_up), "output at start-up");
+            hold(rail_.positive, rail_.negative, rail_.start_up, "output at start-up");
         } else if (held_) {
             const field* bias = s_.stage->feedback.contains("bias-current") ? &s_.stage->feedback.at("bias-current") : nullptr;
             out_.net.held = circuit::held_output{node(rail_.positive),
@@ -136,7 +136,7 @@ private:
         for (const auto& [net, at] : l.nets) {
             const bool known = net == s_.return_net || net == rail_.positive || net == rail_.negative || net == rail_.switch_net;
             const auto units = l.between(net, s_.return_net).value_or(range{at.base, at.base + (at.moving ? 1.0 : 0.0)});
-            if (!known) {
+            if (!known && !l.alone(s_, net)) {
                 hold(net, s_.return_net, times(rail_.port, units), "ladder net " + net);
             }
         }

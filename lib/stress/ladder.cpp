@@ -252,6 +252,20 @@ private:
 
 } // namespace
 
+bool ladder::alone(const supply& s, const std::string& name) const
+{
+    if (!there || !why.empty() || !nets.contains(name) || !s.stage) {
+        return false;
+    }
+    const auto own = [&](const part& p) {
+        const auto named = [&](const std::string& ref) { return p.ref == ref || p.ref.starts_with(ref + "/"); };
+        return std::any_of(s.stage->ladder.begin(), s.stage->ladder.end(), named);
+    };
+    return std::all_of(s.parts.begin(), s.parts.end(), [&](const part& p) {
+        return own(p) || std::none_of(p.terminals.begin(), p.terminals.end(), [&](const terminal& t) { return t.net == name; });
+    });
+}
+
 std::optional<range> ladder::between(const std::string& a, const std::string& b) const
 {
     const auto x = nets.find(a);

@@ -31,6 +31,8 @@ struct ladder {
     physics::ladder_form form = physics::ladder_form::stacked;
     std::string loaded_why;
 
+    /// True if no part but the ladder's own hangs on the net: it is told by the ladder alone and needs no place in a network.
+    bool alone(const supply& s, const std::string& name) const;
     /// Extremes of a above b over both phases, in units of the peak; nothing where a net is not of the ladder.
     std::optional<range> between(const std::string& a, const std::string& b) const;
 };

@@ -54,12 +54,6 @@ value cannot_tell(const solved_supply& s, const std::string& what)
                                                             : what + " where whole cycles run into each other: measure it"});
 }
 
-/// Share of the time that full cycles run to feed the load.
-interval rate_of(const view& v)
-{
-    return physics::lesser_of((v.stage.load / physics::full_current(v.stage)).value(), interval(1.0));
-}
-
 value of_empty_cycles(const solved_supply& s, const std::string& formula, const dimension& d, const stage_model::form& f)
 {
     auto needs = with_cycle(s, port);
@@ -86,25 +80,22 @@ value effective(const solved_supply& s, const std::string& what, const stage_mod
 value coil_effective(const solved_supply& s)
 {
     return effective(
-        s, "coil current", [](const view& v) { return physics::effective_full(v.stage).coil.value() * physics::root(rate_of(v)); },
+        s, "coil current", [](const view& v) { return physics::effective_paced(v.stage).coil.value(); },
         [](const view& v) { return physics::effective_regulated(v.stage).coil.value(); });
 }
 
 value rectifier_effective(const solved_supply& s)
 {
     return effective(
-        s, "rectifier current", [](const view& v) { return physics::effective_full(v.stage).rectifier.value() * physics::root(rate_of(v)); },
+        s, "rectifier current", [](const view& v) { return physics::effective_paced(v.stage).rectifier.value(); },
         [](const view& v) { return physics::effective_regulated(v.stage).rectifier.value(); });
 }
 
 value inductor_average(const solved_supply& s)
 {
     if (surely_discontinuous(s)) {
-        return of_empty_cycles(s, "i (on + emptying)/(2 T), as often as the load asks", dim::current, [](const view& v) {
-            const interval share = v.stage.limited ? interval(1.0) - physics::slack(v.stage)
-                                                   : v.stage.duty * (interval(1.0) + (v.stage.in / physics::reset_voltage(v.stage)).value());
-            return physics::full_peak(v.stage).value() * share * rate_of(v) * interval(0.5);
-        });
+        return of_empty_cycles(s, "load turns (reset + Uin)/Uin", dim::current,
+                               [](const view& v) { return physics::average_paced(v.stage).value(); });
     }
     return by_whole_cycles(s) ? cannot_tell(s, "the average coil current")
                               : of_loaded(s, "load turns/(1 - D), resistances counted", dim::current,
@@ -380,7 +371,7 @@ value inductor_peak(const solved_supply& s)
 value switch_effective(const solved_supply& s)
 {
     return effective(
-        s, "switch current", [](const view& v) { return physics::effective_full(v.stage).power_switch.value() * physics::root(rate_of(v)); },
+        s, "switch current", [](const view& v) { return physics::effective_paced(v.stage).power_switch.value(); },
         [](const view& v) { return physics::effective_regulated(v.stage).power_switch.value(); });
 }
 
