@@ -40,6 +40,15 @@ volts<N> reset_and_input(const stage<N>& s)
     return s.is == shape::boost ? s.out + s.drop : reset_voltage(s) + s.in;
 }
 
+/// Ripple of the coil current in continuous mode: what the resistances leave of the input, over the on-time.
+template<class N>
+amperes<N> swing(const stage<N>& s, const N& off)
+{
+    const amperes<N> mean = s.load * s.turns / off;
+    const volts<N> across = s.in - mean * (s.coil + s.on_resistance);
+    return volts<N>::from_value(at_least(across.value(), 0.0)) * (s.period * (N(1.0) - off)) / s.inductance;
+}
+
 template<class N>
 N on_share(const stage<N>& s)
 {
@@ -150,7 +159,7 @@ template<class N>
 amperes<N> regulated_ripple(const stage<N>& s)
 {
     return decided(
-        continuity(s), [&] { return s.in * (s.period * (N(1.0) - off_share(s))) / s.inductance; }, [&] { return regulated_peak(s); });
+        continuity(s), [&] { return swing(s, off_share(s)); }, [&] { return regulated_peak(s); });
 }
 
 template<class N>
@@ -160,7 +169,7 @@ amperes<N> regulated_peak(const stage<N>& s)
         continuity(s),
         [&] {
             const N off = off_share(s);
-            return s.load * s.turns / off + s.in * (s.period * (N(1.0) - off)) / s.inductance * half<N>();
+            return s.load * s.turns / off + swing(s, off) * half<N>();
         },
         [&] {
             const N square = (s.load * s.turns * N(2.0) * reset_voltage(s) * s.period / s.inductance).value();
@@ -199,8 +208,8 @@ amperes<N> most_load(const stage<N>& s)
         [&] {
             if (s.limited) {
                 const N share = N(1.0) / (N(1.0) + (reset_voltage(s) / s.in).value());
-                const amperes<N> swing = s.in * (s.period * (N(1.0) - share)) / s.inductance;
-                return amperes<N>::from_value(at_least((s.limit - swing * half<N>()).value(), 0.0)) * share / s.turns;
+                const amperes<N> ripple = s.in * (s.period * (N(1.0) - share)) / s.inductance;
+                return amperes<N>::from_value(at_least((s.limit - ripple * half<N>()).value(), 0.0)) * share / s.turns;
             }
             const N off = N(1.0) - s.duty;
             const ohms<N> r =
@@ -255,8 +264,7 @@ effective<N> effective_regulated(const stage<N>& s)
     const auto trapezes = [&] {
         const N off = off_share(s);
         const amperes<N> mean = s.load * s.turns / off;
-        const amperes<N> swing = s.in * (s.period * (N(1.0) - off)) / s.inductance;
-        const amperes<N> all = amperes<N>::from_value(root(squared(mean.value()) + squared(swing.value()) / N(12.0)));
+        const amperes<N> all = amperes<N>::from_value(root(squared(mean.value()) + squared(swing(s, off).value()) / N(12.0)));
         return effective<N>{all, all * root(N(1.0) - off), all / s.turns * root(off)};
     };
     const N test = continuity(s);

@@ -1,5 +1,6 @@
 #include "stress/dc_network.hpp"
 #include "stress/spread_math.hpp"
+#include "stress/stage_bodies.hpp"
 
 #include <algorithm>
 #include <cmath>
@@ -55,7 +56,9 @@ public:
             }
         }
         add_others();
-        override_ladder();
+        for (auto& [ref, volts] : ladder_voltages(s_, rail_, out_.in)) {
+            out_.bodies[ref].voltage = std::move(volts);
+        }
         return std::move(out_);
     }
 
@@ -195,7 +198,7 @@ private:
     value potential(const std::string& net, int node) const
     {
         if (const auto units = rail_.rungs.between(net, s_.return_net); units && by_ladder(net)) {
-            value told = hull(in_units(port(), units->low, ""), in_units(port(), units->high, ""));
+            value told = hull(in_units(ladder_port(rail_, out_.in), units->low), in_units(ladder_port(rail_, out_.in), units->high));
             told.shown.formula = "V(" + net + "), unloaded ladder";
             return told;
         }
@@ -223,7 +226,7 @@ private:
         const auto units = held(a) && held(b) ? std::nullopt : rail_.rungs.between(a, b);
         if (units && out_.in != state::standby && !rail_.port.numbers.empty()) {
             // Both hang on the same ladder: they move together.
-            v = hull(in_units(port(), units->low, ""), in_units(port(), units->high, ""));
+            v = hull(in_units(ladder_port(rail_, out_.in), units->low), in_units(ladder_port(rail_, out_.in), units->high));
             v.shown.formula = "V(" + a + ") - V(" + b + "), unloaded ladder";
             return v;
         }
@@ -336,7 +339,7 @@ private:
                 b.voltage = out_.in == state::standby ? out_.voltage(p.terminals.front().net, p.terminals.back().net) : stage_voltage();
             } else if (s_.stage && of(p, s_.stage->rectifier)) {
                 // Each body of a string may have to block all of it: the one that leaks least does.
-                b.voltage = rectifier_voltage();
+                b.voltage = rectifier_voltage(s_, rail_, out_.in);
             } else {
                 b.voltage = out_.voltage(p.terminals[0].net, p.terminals[1].net);
             }
@@ -354,95 +357,6 @@ private:
             s.nominal.reset();
         }
         return v;
-    }
-
-    /// What the rectifier blocks while the switch is on: the output, and what the secondary stands the other way.
-    value rectifier_voltage() const
-    {
-        value v = out_.in == state::standby ? rail_.standby : out_.in == state::start_up ? rail_.start_up : rail_.output;
-        if (rail_.topology == "flyback") {
-            v = flyback_reverse(v);
-        } else if (rail_.topology != "boost") {
-            return missing_value(value::type::number, {"the rectifier voltage of a " + rail_.topology + " stage"});
-        }
-        for (spread& s : v.numbers) {
-            s = negated(s);
-            s.in_use.high = s.whole.high = 0.0;
-            s.nominal.reset();
-        }
-        v.shown.formula = rail_.topology == "flyback" ? "output + turns Uin, ringing not counted" : "blocks the rail while the switch is on";
-        return v;
-    }
-
-    value flyback_reverse(const value& output) const
-    {
-        if (rail_.secondary_net.empty()) {
-            return missing_value(value::type::number, {"a secondary that the rectifier hangs on"});
-        }
-        // The side of the swing that the switch drives: below zero where the anode swings, above where the cathode does.
-        const bool below = swings_by_anode();
-        value driven = rail_.secondary_swing;
-        for (spread& s : driven.numbers) {
-            s.in_use = {0.0, below ? -s.in_use.low : s.in_use.high};
-            s.whole = {0.0, below ? -s.whole.low : s.whole.high};
-        }
-        return sum(output, driven);
-    }
-
-    bool swings_by_anode() const
-    {
-        const part* d = s_.find_part(s_.stage->rectifier);
-        return d != nullptr && d->net("anode") == rail_.secondary_net;
-    }
-
-    /// In a ladder a capacitor holds the same over both phases, a diode blocks the greater of them.
-    void override_ladder()
-    {
-        const ladder& l = rail_.rungs;
-        if (!l.there || out_.in == state::standby) {
-            return;
-        }
-        if (!l.why.empty()) {
-            for (const std::string& ref : s_.stage->ladder) {
-                out_.bodies[ref].voltage = missing_value(value::type::number, {ref + " in a ladder that cannot be solved: " + l.why});
-            }
-            return;
-        }
-        for (const ladder::stressed& c : l.capacitors) {
-            out_.bodies[c.ref].voltage = in_units(port(), c.voltage, "its share of the ladder");
-        }
-        for (const ladder::stressed& d : l.diodes) {
-            out_.bodies[d.ref].voltage = in_units(port(), -d.voltage, "blocks its step of the ladder");
-        }
-    }
-
-    value port() const { return out_.in == state::start_up ? lifted_port() : rail_.port; }
-
-    value lifted_port() const
-    {
-        value v = rail_.port;
-        const double share = rail_.topology == "boost-multiplier" ? rail_.rungs.multiple : 1.0;
-        inherit(v, rail_.overshoot);
-        for (spread& s : v.numbers) {
-            if (!rail_.overshoot.numbers.empty() && share > 0.0) {
-                s.in_use.high += rail_.overshoot.numbers.front().in_use.high / share;
-                s.whole.high += rail_.overshoot.numbers.front().whole.high / share;
-            }
-        }
-        return v;
-    }
-
-    /// From nothing to so many times the port's voltage: the ladder fills from nothing, and a load takes part of it.
-    static value in_units(value port, double units, const std::string& formula)
-    {
-        for (spread& s : port.numbers) {
-            for (range* r : {&s.in_use, &s.whole}) {
-                *r = {std::min(0.0, units * r->high), std::max(0.0, units * r->high)};
-            }
-            s.nominal.reset();
-        }
-        port.shown.formula = formula;
-        return port;
     }
 
     const supply& s_;

@@ -191,6 +191,13 @@ private:
         for (const form f : e.forms) {
             b.options.push_back(option_of(e, f));
         }
+        if (held_ && senses(e)) {
+            // It conducts where the feedback holds: dark there would be no set point.
+            std::erase_if(b.options, [](const circuit::option& o) { return o.is != circuit::form::clamp; });
+            for (circuit::option& o : b.options) {
+                o.is = circuit::form::fixed;
+            }
+        }
         const bool spans = std::any_of(e.forms.begin(), e.forms.end(), [](form f) { return f == form::current; });
         if (spans && e.forms.size() == 1) {
             b.options.push_back({circuit::form::open, {}}); // a load draws from none to its most
@@ -199,6 +206,13 @@ private:
         out_.branch_of.push_back(static_cast<int>(out_.net.branches.size()));
         out_.net.branches.push_back(std::move(b));
         out_.elements.push_back(std::move(e));
+    }
+
+    /// A zener that the feedback names.
+    bool senses(const element& e) const
+    {
+        const auto& list = s_.stage->zeners;
+        return std::any_of(list.begin(), list.end(), [&](const std::string& ref) { return e.ref == ref || e.ref.starts_with(ref + "/"); });
     }
 
     void add_track(element e, int from, int to)

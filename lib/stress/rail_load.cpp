@@ -131,44 +131,95 @@ std::set<std::string> sense_nets(const supply& s, const library& lib, const rail
     return chain;
 }
 
+namespace {
+
+/// The output's two nets as a network of resistances, each at one end of its box, fed with one volt.
+class across_output {
+public:
+    across_output(const supply& s, const library& lib, const rail& output) : live_(live_nets(s, lib, output)), quiet_(quiet_nets(s, lib, output)) {}
+
+    bool fed() const { return !live_.empty(); }
+
+    void add(const element& e, double resistance)
+    {
+        if (at(e.from) != at(e.to)) {
+            net_.branches.push_back({at(e.from), at(e.to), {{circuit::form::resistance, {resistance, resistance}}}});
+        }
+    }
+
+    double siemens()
+    {
+        const int feed = static_cast<int>(node_.size()) + 2;
+        net_.branches.push_back({feed, 1, {{circuit::form::resistance, {least_ohms, least_ohms}}}});
+        net_.sources.push_back({feed, 0, {1.0, 1.0}});
+        net_.nodes = feed + 1;
+        return std::max(0.0, circuit::solve(net_).current.back().low);
+    }
+
+private:
+    int at(const std::string& net)
+    {
+        return quiet_.contains(net) ? 0 : live_.contains(net) ? 1 : node_.emplace(net, static_cast<int>(node_.size()) + 2).first->second;
+    }
+
+    std::set<std::string> live_, quiet_;
+    circuit::network net_;
+    std::map<std::string, int> node_;
+};
+
+/// Resistance of an element at one end; nothing where it is not known or none.
+std::optional<double> resistance_of(const element& e, bool high)
+{
+    const auto track = e.values.find(form::track);
+    const auto found = track != e.values.end() ? track : e.values.find(form::resistance);
+    if (found == e.values.end()) {
+        return least_ohms;
+    }
+    if (found->second.numbers.empty() || !found->second.numbers.front().whole.bounded()) {
+        return std::nullopt;
+    }
+    return high ? found->second.numbers.front().whole.high : found->second.numbers.front().whole.low;
+}
+
+} // namespace
+
 double sure_conductance(const supply& s, const library& lib, const rail& output, bool with_sense)
 {
-    const std::set<std::string> live = live_nets(s, lib, output);
-    const std::set<std::string> quiet = quiet_nets(s, lib, output);
     const std::set<std::string> chain = with_sense ? std::set<std::string>{} : sense_nets(s, lib, output);
-    circuit::network n;
-    std::map<std::string, int> node;
-    const auto at = [&](const std::string& net) {
-        return quiet.contains(net) ? 0 : live.contains(net) ? 1 : node.emplace(net, static_cast<int>(node.size()) + 2).first->second;
-    };
+    across_output net(s, lib, output);
+    if (!net.fed()) {
+        return 0.0;
+    }
     for (const element& e : wire(s, lib, state::switched_off, output.stage_parts)) {
         const bool sensing = chain.contains(e.from) || chain.contains(e.to) || (!e.wiper.empty() && chain.contains(e.wiper));
         const part* p = s.find_part(e.ref);
-        if (!discharges(e) || sensing || (p != nullptr && of_stage(s, output, *p))) {
+        // The wiper of a trimmer may stand at either end: only the whole track is sure; what is unknown loads nothing for sure.
+        const auto most = resistance_of(e, true);
+        if (most && discharges(e) && !sensing && (p == nullptr || !of_stage(s, output, *p))) {
+            net.add(e, *most);
+        }
+    }
+    return net.siemens();
+}
+
+std::optional<double> most_conductance(const supply& s, const library& lib, const rail& output)
+{
+    across_output net(s, lib, output);
+    if (!net.fed()) {
+        return std::nullopt;
+    }
+    for (const element& e : wire(s, lib, state::running, output.stage_parts)) {
+        const part* p = s.find_part(e.ref);
+        if ((p != nullptr && of_stage(s, output, *p)) || !may_conduct(e)) {
             continue;
         }
-        const auto track = e.values.find(form::track);
-        const auto ohms = e.values.find(form::resistance);
-        const value* v = track != e.values.end() ? &track->second : ohms != e.values.end() ? &ohms->second : nullptr;
-        if (v != nullptr && (v->numbers.empty() || !v->numbers.front().whole.bounded())) {
-            continue; // unknown: it loads nothing for sure
+        const auto least = resistance_of(e, false);
+        if (!discharges(e) || !e.wiper.empty() || !least) {
+            return std::nullopt;
         }
-        const double most = v == nullptr ? least_ohms : v->numbers.front().whole.high;
-        if (!e.wiper.empty()) {
-            // The wiper may stand at either end: only the whole track is sure.
-            n.branches.push_back({at(e.from), at(e.to), {{circuit::form::resistance, {most, most}}}});
-        } else if (at(e.from) != at(e.to)) {
-            n.branches.push_back({at(e.from), at(e.to), {{circuit::form::resistance, {most, most}}}});
-        }
+        net.add(e, *least);
     }
-    if (live.empty()) {
-        return 0.0;
-    }
-    const int feed = static_cast<int>(node.size()) + 2;
-    n.branches.push_back({feed, 1, {{circuit::form::resistance, {least_ohms, least_ohms}}}});
-    n.sources.push_back({feed, 0, {1.0, 1.0}});
-    n.nodes = feed + 1;
-    return std::max(0.0, circuit::solve(n).current.back().low);
+    return net.siemens();
 }
 
 std::optional<double> feeding_resistance(const std::vector<element>& elements, const std::set<std::string>& stiff, const std::string& net)

@@ -16,6 +16,9 @@ value rail_load(const supply& s, const library& lib, const rail& output, const d
 /// Conductance that soldered resistances surely put across the output, at its least; the chain that senses it is counted or not.
 double sure_conductance(const supply& s, const library& lib, const rail& output, bool with_sense);
 
+/// Conductance across the output at its most, where nothing but resistances hangs on it; nothing else.
+std::optional<double> most_conductance(const supply& s, const library& lib, const rail& output);
+
 /// Nets of the sensing chain: reached from the feedback net through soldered resistances without passing the output or the return.
 std::set<std::string> sense_nets(const supply& s, const library& lib, const rail& output);
 /// Time constant of the capacitors on that chain, at its greatest: sum of C times the resistance that feeds its net; none is 0 s.

@@ -5,6 +5,15 @@
 
 namespace onehand {
 
+/// How far start-up carries the output past its set point.
+void find_start_up(const supply& s, const library& lib, rail& r);
+
+/// What a ladder makes of its port; 1 for any other stage, 0 where it cannot be solved.
+double lift_of(const rail& r);
+/// The parameters of a full cycle and more.
+std::vector<stage_model::given> with_cycle(const stage_model& m, std::vector<stage_model::given> more);
+value scaled_by(value v, double factor);
+
 /// Fills model, ladder, port, start-up and runaway; the output itself where nothing regulates it, or feedback is lost.
 void find_stage(const supply& s, const library& lib, rail& r);
 

@@ -214,7 +214,7 @@ value start_up_peak(const solved_supply& s)
     if (m.limited()) {
         // The comparator's delay lets each cycle add a little while the rail is too low to take it off again.
         value v = with.figure("inrush + limit + one delay for each cycle of it", dim::current, needs, [](const view& w) {
-            const interval lc = (w.stage.inductance.value() * w.of(given::capacitance));
+            const interval lc = w.stage.inductance.value() * w.of(given::capacitance) * physics::squared(w.stage.turns);
             const interval swing = w.stage.is == physics::shape::boost
                                        ? w.stage.in.value() * physics::root(w.of(given::capacitance) / w.stage.inductance.value())
                                        : interval(0.0);

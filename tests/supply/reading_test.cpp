@@ -100,7 +100,7 @@ TEST_CASE("strings become bodies with nets of their own")
     CHECK(s.find_part("R7") == nullptr);
     CHECK(s.find_part("R7/1")->terminals[1].net == s.find_part("R7/2")->terminals[0].net);
     CHECK(s.find_part("R7/1")->terminals[0].net == "HT");
-    CHECK(s.find_part("R7/2")->terminals[1].net == "A");
+    CHECK(s.find_part("R7/2")->terminals[1].net == "FB");
 }
 
 TEST_CASE("changes edit a copy")

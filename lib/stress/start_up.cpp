@@ -1,0 +1,133 @@
+// How far the rail runs past its set point before lagging feedback stops the stage.
+#include "stress/stage_rail.hpp"
+
+#include "physics/surge.hpp"
+#include "stress/spread_math.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+namespace onehand {
+
+namespace {
+
+using given = stage_model::given;
+using physics::interval;
+using view = stage_model::view;
+
+/// What the pump is made of, each at both ranges.
+struct pump {
+    value power;  // of full cycles
+    value most;   // where they run into each other and a comparator ends each
+    value energy; // of the last packet
+    value slack, period, farads, filter, lag;
+    bool run_together = false;
+};
+
+pump pump_of(const supply& s, const library& lib, const rail& r)
+{
+    const stage_model& m = r.model;
+    const auto cycle = with_cycle(m, {given::in, given::inductance});
+    pump p;
+    p.power = m.figure("L i^2/(2 T)", dim::power, cycle, [](const view& v) { return physics::full_power(v.stage).value(); });
+    p.energy = m.figure("L i^2/2", dim::energy, cycle, [](const view& v) { return physics::full_energy(v.stage).value(); });
+    p.most = m.figure("Uin i", dim::power, cycle, [](const view& v) { return (v.stage.in * physics::full_peak(v.stage)).value(); });
+    p.period = m.figure("T", dim::time, m.cycle(), [](const view& v) { return v.stage.period.value(); });
+    auto all = cycle;
+    all.insert(all.end(), {given::out, given::drop, given::turns});
+    p.slack = m.figure("1 - (on + emptying)/T", dim::none, all, [](const view& v) { return physics::slack(v.stage); });
+    p.farads = port_capacitance(s, lib, r);
+    p.filter = sense_filter(s, lib, r);
+    const auto lag = s.stage->feedback.find("lag");
+    p.lag = written_value(lag == s.stage->feedback.end() ? std::nullopt : std::optional(lag->second), value::type::number,
+                          s.stage->name + ".feedback.lag");
+    return p;
+}
+
+void note_missing(const supply& s, const rail& r, pump& p, value& overshoot)
+{
+    for (const value* v : std::initializer_list<const value*>{&p.power, &p.energy, &p.farads, &p.filter, &p.lag, &r.port, &p.slack}) {
+        inherit(overshoot, *v);
+        overshoot.shown.inputs.insert(overshoot.shown.inputs.end(), v->shown.inputs.begin(), v->shown.inputs.end());
+    }
+    if (!overshoot.missing.empty()) {
+        return;
+    }
+    for (const value* v : {&p.lag, &p.filter}) {
+        if (!std::isfinite(v->numbers.front().whole.high)) {
+            overshoot.missing.push_back(s.stage->name + ".feedback.lag: its highest figure");
+        }
+    }
+    p.run_together = !(p.slack.numbers.front().whole.low >= 0.0);
+    if (p.run_together && !r.model.limited()) {
+        overshoot.missing.push_back(s.stage->name + ".overshoot, measured: full cycles run into each other at the set point");
+    }
+    if (!(p.farads.numbers.front().whole.low > 0.0)) {
+        overshoot.missing.push_back("a capacitor straight across the output");
+    }
+}
+
+/// Over one of the two ranges; everything at the end that carries it farthest.
+double carried_past(const rail& r, const pump& p, bool whole)
+{
+    const auto of = [&](const value& v) { return whole ? v.numbers.front().whole : v.numbers.front().in_use; };
+    const auto given_of = [&](given g) { return whole ? r.model.at(g).at->whole : r.model.at(g).at->in_use; };
+    const bool boost = r.model.shape() == physics::shape::boost;
+    const double input = boost ? given_of(given::in).high : 0.0;
+    const double set = of(r.port).high;
+    physics::pumped_rail pumped;
+    pumped.from = pumped.input = volt::from_value(input);
+    pumped.set_point = volt::from_value(set);
+    pumped.turns = boost ? 1.0 : given_of(given::turns).low;
+    pumped.stored = watt::from_value(of(p.run_together ? p.most : p.power).high);
+    pumped.packet = joule::from_value(of(p.energy).high);
+    pumped.rail = farad::from_value(of(p.farads).low);
+    pumped.filter = second::from_value(of(p.filter).high);
+    // Each diode of a ladder hands on once a cycle: the output is late by that many.
+    pumped.lag = second::from_value(of(p.lag).high + of(p.period).high * r.rungs.drops);
+    return std::max(0.0, physics::carried_to(pumped).value() - set) * lift_of(r);
+}
+
+value overshoot_of(const supply& s, const library& lib, const rail& r)
+{
+    if (const field* written = s.stage->find("overshoot")) {
+        const spread& o = *written->number();
+        value v = number({dim::voltage, {0.0, o.in_use.high}, {0.0, o.whole.high}, std::nullopt});
+        v.shown = {"as written", {input_of(s.stage->name + ".overshoot", *written)}, false, 0.0};
+        return v;
+    }
+    value v;
+    pump p = pump_of(s, lib, r);
+    note_missing(s, r, p, v);
+    if (v.missing.empty()) {
+        const double in_use = carried_past(r, p, false);
+        v.numbers.push_back({dim::voltage, {0.0, in_use}, {0.0, std::max(in_use, carried_past(r, p, true))}, std::nullopt});
+    }
+    v.shown.formula = "full cycles until the lagging feedback stops them, and one more packet";
+    return v;
+}
+
+} // namespace
+
+void find_start_up(const supply& s, const library& lib, rail& r)
+{
+    r.start_up = r.output;
+    r.overshoot = number(exactly({0.0, dim::voltage}));
+    if (r.basis == "as declared" && s.stage->find("overshoot") == nullptr) {
+        r.overshoot.shown.formula = "the declared output";
+        return;
+    }
+    if (r.feedback_lost || r.output.numbers.empty() || r.basis == "running free") {
+        return;
+    }
+    r.overshoot = overshoot_of(s, lib, r);
+    if (r.overshoot.numbers.empty()) {
+        inherit(r.start_up, r.overshoot);
+        return;
+    }
+    r.start_up = sum(r.output, r.overshoot);
+    r.start_up.shown = r.overshoot.shown;
+    r.start_up.shown.formula = "set point + overshoot";
+}
+
+} // namespace onehand
