@@ -10,27 +10,39 @@ double shrunk(double x)
 {
     return x < 1e-9 ? 1.0 - 0.5 * x : -std::expm1(-x) / x;
 }
-/// (1 - e^-x)/x, falling.
-double loss_share(double x)
+
+/// x ((1 - e^-Rx)/(Rx))^2: what losses leave of on/L in a packet's power. Rising in x up to Rx = 1.2564, falling in R.
+double power_slope(double x, double r)
 {
-    return shrunk(x);
+    return x * shrunk(r * x) * shrunk(r * x);
 }
-interval loss_share(const interval& x)
+interval power_slope(const interval& x, const interval& r)
 {
-    const double top = std::max(x.upper(), 0.0);
-    return {std::isfinite(top) ? shrunk(top) : 0.0, shrunk(std::max(x.lower(), 0.0))};
+    constexpr double rising_to = 1.25;
+    const double least_x = std::max(x.lower(), 0.0);
+    if (!std::isfinite(r.upper()) || !std::isfinite(x.upper())) {
+        return {0.0, x.upper()};
+    }
+    const double low = std::min(power_slope(least_x, r.upper()), power_slope(x.upper(), r.upper()));
+    const double high = r.lower() * x.upper() < rising_to ? power_slope(x.upper(), r.lower()) : x.upper();
+    return {low, high};
+}
+
+/// (1 - e^-Rx)/R: rising in x, falling in R.
+double current_slope(double x, double r)
+{
+    return x * shrunk(r * x);
+}
+interval current_slope(const interval& x, const interval& r)
+{
+    const double low = std::isfinite(r.upper()) ? current_slope(std::max(x.lower(), 0.0), r.upper()) : 0.0;
+    return {low, std::isfinite(x.upper()) ? current_slope(x.upper(), r.lower()) : x.upper()};
 }
 
 template<class N>
 N half()
 {
     return N(0.5);
-}
-
-template<class N>
-N kept_by_losses(const stage<N>& s)
-{
-    return loss_share(((s.coil + s.on_resistance) * s.on / s.inductance).value());
 }
 
 /// out + drop of a boost stage, in which the input cancels.
@@ -73,7 +85,10 @@ amperes<N> full_peak(const stage<N>& s)
 template<class N>
 amperes<N> full_peak_lossy(const stage<N>& s)
 {
-    return s.limited ? s.limit : full_peak(s) * kept_by_losses(s);
+    if (s.limited) {
+        return s.limit;
+    }
+    return amperes<N>::from_value(s.in.value() * current_slope((s.on / s.inductance).value(), (s.coil + s.on_resistance).value()));
 }
 
 template<class N>
@@ -191,11 +206,30 @@ amperes<N> full_current(const stage<N>& s)
 
 namespace {
 
-/// Of a limited stage without the comparator's delay.
+/// Power of full cycles at the least: series resistances counted, a comparator's delay not.
 template<class N>
-amperes<N> least_current(const stage<N>& s)
+watts<N> least_power(const stage<N>& s)
 {
-    return s.limit * s.limit * s.inductance / (s.period * reset_voltage(s) * s.turns) * half<N>();
+    if (s.limited) {
+        return s.limit * s.limit * s.inductance / s.period * half<N>();
+    }
+    const N slope = power_slope((s.on / s.inductance).value(), (s.coil + s.on_resistance).value());
+    return watts<N>::from_value(squared(s.in.value()) * slope * s.duty * half<N>());
+}
+
+/// Load current in continuous mode at the whole duty.
+template<class N>
+amperes<N> most_continuous(const stage<N>& s)
+{
+    if (s.limited) {
+        const N share = N(1.0) / (N(1.0) + (reset_voltage(s) / s.in).value());
+        const amperes<N> ripple = s.in * (s.period * (N(1.0) - share)) / s.inductance;
+        return amperes<N>::from_value(at_least((s.limit - ripple * half<N>()).value(), 0.0)) * share / s.turns;
+    }
+    const N off = N(1.0) - s.duty;
+    const ohms<N> r = s.is == shape::boost ? s.coil + s.on_resistance * s.duty : (s.coil + s.on_resistance) * s.turns * s.duty;
+    const volts<N> left = s.is == shape::boost ? s.in - (s.out + s.drop) * off : s.in * s.duty - reset_voltage(s) * off;
+    return volts<N>::from_value(at_least(left.value(), 0.0)) * off / r;
 }
 
 } // namespace
@@ -204,20 +238,17 @@ template<class N>
 amperes<N> most_load(const stage<N>& s)
 {
     return decided(
-        slack(s), [&] { return s.limited ? least_current(s) : full_current(s) * squared(kept_by_losses(s)); },
-        [&] {
-            if (s.limited) {
-                const N share = N(1.0) / (N(1.0) + (reset_voltage(s) / s.in).value());
-                const amperes<N> ripple = s.in * (s.period * (N(1.0) - share)) / s.inductance;
-                return amperes<N>::from_value(at_least((s.limit - ripple * half<N>()).value(), 0.0)) * share / s.turns;
-            }
-            const N off = N(1.0) - s.duty;
-            const ohms<N> r =
-                s.is == shape::boost ? s.coil + s.on_resistance * (N(1.0) - off) : (s.coil + s.on_resistance) * s.turns * (N(1.0) - off);
-            const volts<N> left = s.is == shape::boost ? s.in - (s.out + s.drop) * off : s.in * (N(1.0) - off) - reset_voltage(s) * off;
-            const volts<N> usable = volts<N>::from_value(at_least(left.value(), 0.0));
-            return usable * off / r;
-        });
+        slack(s), [&] { return amperes<N>(least_power(s) / (reset_voltage(s) * s.turns)); }, [&] { return most_continuous(s); });
+}
+
+template<class N>
+watts<N> most_power(const stage<N>& s)
+{
+    // out over turns times the resetting voltage, with the output once.
+    const volts<N> beside = s.is == shape::boost ? s.drop - s.in : s.drop;
+    const N share = at_least(N(1.0) + (beside / s.out).value(), 1e-6);
+    return decided(
+        slack(s), [&] { return watts<N>(least_power(s) / share); }, [&] { return watts<N>(most_continuous(s) * s.out); });
 }
 
 template<class N>
@@ -236,20 +267,13 @@ effective<N> effective_paced(const stage<N>& s)
     const N slope = s.limited ? (s.limit / s.in).value() + (s.delay / s.inductance).value() : (s.on / s.inductance).value();
     const N scale = s.load.value() * slope * N(2.0 / 3.0);
     const auto of = [&](const volts<N>& v, const N& turns) { return amperes<N>::from_value(root(scale * v.value() * turns)); };
-    const effective<N> full = effective_full(s);
-    const auto least_of = [](const amperes<N>& a, const amperes<N>& b) { return amperes<N>::from_value(lesser_of(a.value(), b.value())); };
-    const volts<N> reset = reset_voltage(s);
-    return {least_of(of(reset_and_input(s), s.turns), full.coil), least_of(of(reset, s.turns), full.power_switch),
-            least_of(of(s.in, N(1.0) / s.turns), full.rectifier)};
+    return {of(reset_and_input(s), s.turns), of(reset_voltage(s), s.turns), of(s.in, N(1.0) / s.turns)};
 }
 
 template<class N>
 amperes<N> average_paced(const stage<N>& s)
 {
-    const amperes<N> asked = s.load * (s.turns * (N(1.0) + (reset_voltage(s) / s.in).value()));
-    const N share = s.limited ? N(1.0) - at_least(slack(s), 0.0) : s.duty * (N(1.0) + (s.in / reset_voltage(s)).value());
-    const amperes<N> full = full_peak(s) * share * half<N>();
-    return amperes<N>::from_value(lesser_of(asked.value(), full.value()));
+    return s.load * (s.turns * (N(1.0) + (reset_voltage(s) / s.in).value()));
 }
 
 template<class N>
@@ -359,6 +383,7 @@ joules<N> avalanche_energy(const joules<N>& held, const volts<N>& breakdown, con
     template amperes<N> regulated_ripple(const stage<N>&);                                                                                           \
     template coulombs<N> packet(const stage<N>&);                                                                                                    \
     template amperes<N> full_current(const stage<N>&);                                                                                               \
+    template watts<N> most_power(const stage<N>&);                                                                                                   \
     template amperes<N> most_load(const stage<N>&);                                                                                                  \
     template effective<N> effective_full(const stage<N>&);                                                                                           \
     template effective<N> effective_paced(const stage<N>&);                                                                                          \

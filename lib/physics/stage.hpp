@@ -86,6 +86,9 @@ amperes<N> full_current(const stage<N>& s);
 /// Greatest load current at the output voltage: full cycles without a pause, series resistances counted.
 template<class N>
 amperes<N> most_load(const stage<N>& s);
+/// The same times the output voltage.
+template<class N>
+watts<N> most_power(const stage<N>& s);
 
 /// Root-mean-square currents at most: of the inductance, of the switch, of the rectifier (secondary side).
 template<class N>
@@ -96,8 +99,8 @@ template<class N>
 effective<N> effective_full(const stage<N>& s);
 template<class N>
 effective<N> effective_regulated(const stage<N>& s);
-/// Full discontinuous cycles as often as the load asks: of the inductance 2 load on turns (reset + in)/(3 L), and so on, squared; no more than full
-/// cycles without a pause. The average of the inductance: load turns (reset + in)/in.
+/// Full discontinuous cycles as often as the load asks: of the inductance 2 load on turns (reset + in)/(3 L), and so on, squared. The average of the
+/// inductance: load turns (reset + in)/in.
 template<class N>
 effective<N> effective_paced(const stage<N>& s);
 template<class N>

@@ -118,6 +118,7 @@ void add_converter(std::vector<fact_spec>& list)
     for (const auto& [name, meaning] : amperes) {
         list.push_back(solved("converter", name, dim::current, meaning));
     }
+    list.push_back(solved("converter", "slack", dim::none, "1 - (on + emptying)/T of a full cycle: negative where cycles run into each other"));
     list.push_back(solved("converter", "frequency", dim::frequency, "of full cycles"));
     list.push_back(solved("converter", "duty", dim::none, "of full cycles"));
     list.push_back(solved("converter", "output-ripple", dim::voltage, "peak to peak on the output's capacitance, series resistance not counted"));

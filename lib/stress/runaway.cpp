@@ -220,7 +220,7 @@ std::string short_story(const solved_supply& s)
                                    : "coil and ladder diodes lead from the input where no capacitor stands between; fuse and source limit it";
     }
     if (topology == "flyback") {
-        const auto watts = highest(*stage_fact(s, "available-power"));
+        const auto watts = highest(converter_figure(s, "available-power"));
         return "the stage's own power" + (watts ? ", up to " + format_quantity({*watts, dim::power}, 3) : std::string(", not known"));
     }
     const field* limit = b.stage ? b.stage->find("power-limit") : nullptr;

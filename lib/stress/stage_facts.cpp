@@ -74,7 +74,14 @@ value effective(const solved_supply& s, const std::string& what, const stage_mod
     if (by_whole_cycles(s)) {
         return cannot_tell(s, "the effective " + what);
     }
-    return of_loaded(s, "duty as the load asks, effective " + what, dim::current, regulated);
+    const value adjusted = of_loaded(s, "duty as the load asks, effective " + what, dim::current, regulated);
+    if (!s.stage().limited()) {
+        return adjusted;
+    }
+    // Or every cycle up to the limit, as often as the load asks.
+    value either = greater(adjusted, of_empty_cycles(s, "", dim::current, full));
+    either.shown.formula = "the greater of full cycles paced and of an adjusted limit, effective " + what;
+    return either;
 }
 
 value coil_effective(const solved_supply& s)
@@ -129,7 +136,7 @@ value at_most_load(const solved_supply& s, const std::string& formula, const dim
 
 value conduction_mode(const solved_supply& s)
 {
-    const value slack = stage_slack(s);
+    const value slack = converter_figure(s, "slack");
     if (slack.numbers.empty()) {
         return missing_value(value::type::choice, slack.missing);
     }
@@ -168,7 +175,7 @@ value available_power(const solved_supply& s)
     return at_most_load(s, "greatest load current times output", dim::power, [](const view& w) {
         view hot = w;
         hot.stage.on_resistance = physics::ohms<interval>::from_value(w.of(given::hot_resistance));
-        return (physics::most_load(hot.stage) * hot.stage.out).value();
+        return physics::most_power(hot.stage).value();
     });
 }
 
@@ -200,25 +207,31 @@ value output_ripple(const solved_supply& s)
         x.whole = {x.whole.low, x.in_use.low};
     }
     m.set(given::capacitance, least, "capacitance across the output");
-    const bool full = surely_discontinuous(s) || s.stage().limited();
-    auto needs = with_cycle(s, full ? port : loaded);
-    needs.insert(needs.end(), {given::load, given::capacitance});
-    value v = m.figure(
-        "charge above the load over C, peak to peak; series resistance not counted", dim::voltage, needs,
-        [full](const view& w) {
-            const auto peak = full ? physics::full_peak(w.stage) : physics::regulated_peak(w.stage);
-            const auto c = physics::farads<interval>::from_value(w.of(given::capacitance));
-            return physics::output_ripple(w.stage, peak, c).value();
-        },
-        full ? std::vector<given>{} : std::vector<given>{});
-    return v;
+    if (surely_discontinuous(s)) {
+        // At no load all of a packet stays.
+        auto needs = with_cycle(s, port);
+        needs.push_back(given::capacitance);
+        value v = m.figure("one packet over C, peak to peak; series resistance not counted", dim::voltage, needs,
+                           [](const view& w) { return physics::packet(w.stage).value() / w.of(given::capacitance); });
+        for (spread& x : v.numbers) {
+            x.in_use.low = x.whole.low = 0.0;
+        }
+        return v;
+    }
+    auto needs = with_cycle(s, loaded);
+    needs.push_back(given::capacitance);
+    return m.figure("charge above the load over C, peak to peak; series resistance not counted", dim::voltage, needs, [](const view& w) {
+        const auto c = physics::farads<interval>::from_value(w.of(given::capacitance));
+        const auto peak = w.stage.limited ? physics::full_peak(w.stage) : physics::regulated_peak(w.stage);
+        return physics::output_ripple(w.stage, peak, c).value();
+    });
 }
 
 /// Heat in coil, switch and rectifier; what is not known of them leaves it open.
 value losses(const solved_supply& s)
 {
-    const value coil = coil_effective(s);
-    const value through = switch_effective(s);
+    const value coil = converter_figure(s, "inductor-effective");
+    const value through = converter_figure(s, "switch-effective");
     value v = number(exactly({0.0, dim::power}));
     const auto add = [&](const value& amps, given ohms) {
         const stage_model::parameter& r = s.stage().at(ohms);
@@ -248,8 +261,8 @@ value losses(const solved_supply& s)
 
 value input_current(const solved_supply& s)
 {
-    const value power = load_power(s);
-    const value lost = losses(s);
+    const value power = converter_figure(s, "load-power");
+    const value lost = converter_figure(s, "losses");
     const stage_model::parameter& in = s.stage().at(given::in);
     value v;
     inherit(v, power);
@@ -343,7 +356,7 @@ value stage_slack(const solved_supply& s)
 
 bool surely_discontinuous(const solved_supply& s)
 {
-    const value slack = stage_slack(s);
+    const value slack = converter_figure(s, "slack");
     return !slack.numbers.empty() && slack.missing.empty() && slack.numbers.front().whole.low >= 0.0;
 }
 
@@ -353,7 +366,7 @@ value inductor_peak(const solved_supply& s)
         return s.stage().figure("limit + Uin delay/L", dim::current, {given::in, given::inductance, given::limit, given::delay},
                                 [](const view& v) { return physics::full_peak(v.stage).value(); });
     }
-    const value slack = stage_slack(s);
+    const value slack = converter_figure(s, "slack");
     if (!slack.missing.empty() || slack.numbers.empty()) {
         return missing_value(value::type::number, slack.missing);
     }
@@ -361,11 +374,20 @@ value inductor_peak(const solved_supply& s)
         return s.stage().figure("Uin on/L of a full cycle", dim::current, with_cycle(s, {given::in, given::inductance}),
                                 [](const view& v) { return physics::full_peak(v.stage).value(); });
     }
-    if (!by_whole_cycles(s)) {
-        return of_loaded(s, "load turns/(1 - D) + half the ripple, resistances counted", dim::current,
-                         [](const view& v) { return physics::regulated_peak(v.stage).value(); });
+    if (by_whole_cycles(s)) {
+        return cannot_tell(s, "the peak coil current");
     }
-    return cannot_tell(s, "the peak coil current");
+    const value adjusted = of_loaded(s, "load turns/(1 - D) + half the ripple, resistances counted", dim::current,
+                                     [](const view& v) { return physics::regulated_peak(v.stage).value(); });
+    if (free_running(s) || !(slack.numbers.front().whole.high >= 0.0)) {
+        return adjusted;
+    }
+    // Where full cycles may run empty, a step of the load calls for them.
+    value full = s.stage().figure("", dim::current, with_cycle(s, {given::in, given::inductance}),
+                                  [](const view& v) { return physics::full_peak(v.stage).value(); });
+    full = greater(adjusted, full);
+    full.shown.formula = "the greater of a full cycle and the duty that the load asks";
+    return full;
 }
 
 value switch_effective(const solved_supply& s)
@@ -382,10 +404,17 @@ value rectifier_average(const solved_supply& s)
     return v;
 }
 
+value converter_figure(const solved_supply& s, const std::string& name)
+{
+    const std::optional<converter>& k = s.bodies().stage;
+    return s.look_up({"converter", k ? k->name : std::string(), {}, k ? k->at : place{}}, state::running, name);
+}
+
 std::optional<value> stage_fact(const solved_supply& s, const std::string& name)
 {
     using figure = value (*)(const solved_supply&);
     static const std::pair<const char*, figure> figures[] = {{"mode", conduction_mode},
+                                                             {"slack", stage_slack},
                                                              {"inductor-peak", inductor_peak},
                                                              {"inductor-average", inductor_average},
                                                              {"inductor-effective", coil_effective},

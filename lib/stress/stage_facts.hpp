@@ -8,6 +8,9 @@ namespace onehand {
 /// A converter's figure by its name in the catalogue; nothing if it is none of these.
 std::optional<value> stage_fact(const solved_supply& s, const std::string& name);
 
+/// The same, looked up: found once, then remembered.
+value converter_figure(const solved_supply& s, const std::string& name);
+
 /// A figure of a part that belongs to the stage or stands on its input or output; nothing if it is none of these.
 std::optional<value> stage_part_fact(const solved_supply& s, const part& p, const std::string& name);
 

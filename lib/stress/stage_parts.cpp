@@ -57,7 +57,7 @@ value junction(const solved_supply& s, const part& p, const value& watts)
 /// I^2 R hot and the switch's own capacitance emptied into it each cycle.
 value switch_heat(const solved_supply& s, const part& p)
 {
-    const value amps = switch_effective(s);
+    const value amps = converter_figure(s, "switch-effective");
     const stage_model::parameter& hot = s.stage().at(given::hot_resistance);
     value v;
     inherit(v, amps);
@@ -71,7 +71,7 @@ value switch_heat(const solved_supply& s, const part& p)
                          {0.0, i.whole.high * i.whole.high * hot.at->whole.high},
                          std::nullopt});
     const field* co = p.find("output-capacitance");
-    const value hertz = *stage_fact(s, "frequency");
+    const value hertz = converter_figure(s, "frequency");
     if (co != nullptr && co->number() != nullptr && !hertz.numbers.empty() && !s.output().peak.numbers.empty()) {
         const double u = s.output().peak.numbers.front().whole.high;
         const double more = 0.5 * co->number()->whole.high * u * u * hertz.numbers.front().whole.high;
@@ -146,7 +146,7 @@ std::optional<value> of_switch(const solved_supply& s, const part& p, const std:
         return not_of_stage(p, name);
     }
     if (name == "effective-current") {
-        return switch_effective(s);
+        return converter_figure(s, "switch-effective");
     }
     if (name == "heat") {
         return switch_heat(s, p);
@@ -173,7 +173,7 @@ bool rectifies(const solved_supply& s, const part& p)
 value recovery_share(const solved_supply& s, const part& p)
 {
     const field* trr = p.find("recovery-time");
-    const value hertz = *stage_fact(s, "frequency");
+    const value hertz = converter_figure(s, "frequency");
     value v;
     inherit(v, hertz);
     if (trr == nullptr || trr->number() == nullptr) {
@@ -209,7 +209,7 @@ std::optional<value> of_rectifier(const solved_supply& s, const part& p, const s
     if (name == "average-current") {
         return rectifier_average(s);
     }
-    return name == "inrush" ? inrush_current(s) : junction(s, p, rectifier_heat(s));
+    return name == "inrush" ? converter_figure(s, "inrush-current") : junction(s, p, rectifier_heat(s));
 }
 
 /// Nets that the input's positive net is one with, the stage's own coil not counted through.
@@ -253,7 +253,7 @@ value adapter_volts(const solved_supply& s)
 /// Ripple that the capacitors at the output share: rectifier current less its mean; each is judged on all of it.
 value output_ripple_current(const solved_supply& s)
 {
-    const value all = *stage_fact(s, "rectifier-effective");
+    const value all = converter_figure(s, "rectifier-effective");
     value v = all;
     for (spread& x : v.numbers) {
         x.in_use.low = x.whole.low = 0.0; // at no load there is none
@@ -352,7 +352,9 @@ std::optional<value> of_coil(const solved_supply& s, const part& p, const std::s
     if (!stage) {
         return not_of_stage(p, name);
     }
-    return name == "peak-current" ? inductor_peak(s) : name == "start-up-peak" ? start_up_peak(s) : *stage_fact(s, "inductor-effective");
+    return name == "peak-current"    ? converter_figure(s, "inductor-peak")
+           : name == "start-up-peak" ? converter_figure(s, "start-up-peak")
+                                     : converter_figure(s, "inductor-effective");
 }
 
 } // namespace
@@ -375,14 +377,14 @@ std::optional<value> stage_part_fact(const solved_supply& s, const part& p, cons
         return truth_of(s.stage().there());
     }
     if (p.kind == "fuse" && name == "inrush-integral") {
-        return inrush_integral(s);
+        return converter_figure(s, "inrush-integral");
     }
     if (p.kind == "fuse" && name == "in-input") {
         const std::set<std::string> side = input_nets(s);
         return truth_of(p.terminals.size() == 2 && side.contains(p.terminals[0].net) && side.contains(p.terminals[1].net));
     }
     if (p.kind == "fuse" && name == "short-current") {
-        return *stage_fact(s, "held-on-current");
+        return converter_figure(s, "held-on-current");
     }
     if ((p.kind == "timer" || p.kind == "controller") && name == "adapter-voltage") {
         return adapter_volts(s);

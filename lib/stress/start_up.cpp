@@ -68,13 +68,12 @@ void note_missing(const supply& s, const rail& r, pump& p, value& overshoot)
 }
 
 /// Over one of the two ranges; everything at the end that carries it farthest.
-double carried_past(const rail& r, const pump& p, bool whole)
+double carried_past(const rail& r, const pump& p, bool whole, double set)
 {
     const auto of = [&](const value& v) { return whole ? v.numbers.front().whole : v.numbers.front().in_use; };
     const auto given_of = [&](given g) { return whole ? r.model.at(g).at->whole : r.model.at(g).at->in_use; };
     const bool boost = r.model.shape() == physics::shape::boost;
     const double input = boost ? given_of(given::in).high : 0.0;
-    const double set = of(r.port).high;
     physics::pumped_rail pumped;
     pumped.from = pumped.input = volt::from_value(input);
     pumped.set_point = volt::from_value(set);
@@ -83,8 +82,9 @@ double carried_past(const rail& r, const pump& p, bool whole)
     pumped.packet = joule::from_value(of(p.energy).high);
     pumped.rail = farad::from_value(of(p.farads).low);
     pumped.filter = second::from_value(of(p.filter).high);
-    // Each diode of a ladder hands on once a cycle: the output is late by that many.
-    pumped.lag = second::from_value(of(p.lag).high + of(p.period).high * r.rungs.drops);
+    // A cycle begun within the lag is finished; each diode of a ladder hands on once a cycle: the output is late by that many.
+    const bool late = of(p.lag).high > 0.0 || of(p.filter).high > 0.0;
+    pumped.lag = second::from_value(of(p.lag).high + of(p.period).high * (r.rungs.drops + (late ? 1 : 0)));
     return std::max(0.0, physics::carried_to(pumped).value() - set) * lift_of(r);
 }
 
@@ -100,8 +100,17 @@ value overshoot_of(const supply& s, const library& lib, const rail& r)
     pump p = pump_of(s, lib, r);
     note_missing(s, r, p, v);
     if (v.missing.empty()) {
-        const double in_use = carried_past(r, p, false);
-        v.numbers.push_back({dim::voltage, {0.0, in_use}, {0.0, std::max(in_use, carried_past(r, p, true))}, std::nullopt});
+        // A packet lifts a low rail further than a high one; with a filter it may be the other way round.
+        const auto farthest = [&](bool whole) {
+            const range port = whole ? r.port.numbers.front().whole : r.port.numbers.front().in_use;
+            double most = 0.0;
+            for (const double share : {0.0, 0.25, 0.5, 0.75, 1.0}) {
+                most = std::max(most, carried_past(r, p, whole, port.low + share * (port.high - port.low)));
+            }
+            return most;
+        };
+        const double in_use = farthest(false);
+        v.numbers.push_back({dim::voltage, {0.0, in_use}, {0.0, std::max(in_use, farthest(true))}, std::nullopt});
     }
     v.shown.formula = "full cycles until the lagging feedback stops them, and one more packet";
     return v;

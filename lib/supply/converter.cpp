@@ -82,7 +82,11 @@ private:
             return {};
         }
         if (std::find(kinds.begin(), kinds.end(), it->second.first) == kinds.end()) {
-            r_.contradict(n.at, "'" + n.text + "' is a " + it->second.first + ", a " + kinds.front() + " is due here", it->second.second);
+            std::string due = kinds.front();
+            for (std::size_t i = 1; i < kinds.size(); ++i) {
+                due += " or " + kinds[i];
+            }
+            r_.contradict(n.at, "'" + n.text + "' is of kind " + it->second.first + "; due here: " + due, it->second.second);
             return {};
         }
         return n.text;

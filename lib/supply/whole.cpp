@@ -64,10 +64,49 @@ void check_polarity(reader& r)
     }
 }
 
+bool on_net(const part* p, const std::string& net)
+{
+    return p != nullptr && std::any_of(p->terminals.begin(), p->terminals.end(), [&](const terminal& t) { return t.net == net; });
+}
+
+/// A stage whose parts do not meet at the switch node is told: the figures speak of one that does.
+void check_stage(reader& r)
+{
+    if (!r.built.stage || r.built.stage->topology == "module") {
+        return;
+    }
+    const converter& c = *r.built.stage;
+    const part* power_switch = r.built.find_part(c.power_switch);
+    const part* coil = r.built.find_part(c.inductor);
+    const part* rectifier = r.built.find_part(c.rectifier);
+    if (power_switch == nullptr) {
+        return;
+    }
+    const std::string& node = power_switch->terminals.front().net;
+    if (coil != nullptr && !on_net(coil, node)) {
+        r.complain(coil->at, "'" + coil->ref + "' does not reach net '" + node + "', where '" + power_switch->ref + "' switches", gravity::note);
+    }
+    if (coil != nullptr && c.topology == "flyback" && coil->kind != "transformer") {
+        r.complain(coil->at, "a flyback stores in a transformer; '" + coil->ref + "' is of kind " + coil->kind);
+    }
+    if (rectifier == nullptr || coil == nullptr) {
+        return;
+    }
+    if (c.topology == "boost" && rectifier->net("anode") != node) {
+        r.complain(rectifier->at, "the anode of '" + rectifier->ref + "' is not on net '" + node + "', where '" + power_switch->ref + "' switches",
+                   gravity::note);
+    }
+    if (c.topology == "flyback" && coil->kind == "transformer" && !on_net(rectifier, coil->net("secondary-1")) &&
+        !on_net(rectifier, coil->net("secondary-2"))) {
+        r.complain(rectifier->at, "'" + rectifier->ref + "' is not on the secondary of '" + coil->ref + "'", gravity::note);
+    }
+}
+
 } // namespace
 
 void check_whole(reader& r)
 {
+    check_stage(r);
     check_single_nets(r);
     check_polarity(r);
 }

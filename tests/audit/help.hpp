@@ -50,6 +50,6 @@ inline const finding* found(const audit_result& r, const std::string& rule, cons
 }
 
 inline const char* const names[] = {"tide-clock-as-built.toml", "tide-clock-corrected.toml", "geiger-bench.toml", "minimal.toml",
-                                    "negative-rail.toml",       "repair-rail.toml"};
+                                    "negative-rail.toml",       "repair-rail.toml",          "valve-rail-flyback.toml"};
 
 } // namespace onehand::test

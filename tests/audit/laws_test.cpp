@@ -37,7 +37,7 @@ std::vector<std::string> cuts(const std::string& text)
     static const std::set<std::string> kept{
         "nets", "ends", "wiper", "anode", "cathode", "cathodes", "positive", "negative", "drain", "gate", "source", "return", "outputs", "topology",
         "inductor", "switch", "rectifier", "core", "screen", "poles", "name", "at", "when", "from", "to", "time", "length", "chassis", "input",
-        "feedback", "drive", "series", "return-bonded",
+        "feedback", "drive", "series", "return-bonded", "ladder", "clamp", "astable", "ra", "rb", "c", "bypass", "zener",
         // Unsaid it is functional inside one circuit by the description's own rule: another question is then judged, with the same figures.
         "insulation"};
     std::vector<std::string> out;
@@ -140,6 +140,99 @@ label = true
 discharge-procedure = true
 )";
 
+/// Keys of the converter that no sample has: a ladder of two steps driven by a timer, fed back through a zener.
+const char* const converter_keys = R"([supply]
+return = "0V"
+complete = ["capacitors", "sources", "access"]
+[use]
+ambient = "20 degC"
+inside-rise = "5 K"
+altitude = "100 m"
+pollution-degree = 1
+location = "dry"
+[input]
+nets = ["VIN", "0V"]
+voltage = "12 V"
+isolated = true
+feed = "battery"
+current-limit = "9 A"
+source-resistance = "0.5 ohm"
+highest-adapter = "12 V"
+reversible = false
+[fuse]
+F1 = { nets = ["VIN", "VF"], rated-current = "1 A", rated-voltage-dc = "32 V", breaking-capacity = "35 A", melting-i2t = "5 A2s" }
+[converter.K1]
+topology = "boost-multiplier"
+inductor = "L1"
+switch = "Q1"
+ladder = ["D1", "C1", "C2", "D2", "D3", "C3"]
+outputs = [["HT", "0V"]]
+spike = "10 V"
+overshoot = "max 5 V"
+drive = { gate = "G", astable = { ra = "RA", rb = "RB", c = "CT", bypass = "DB" }, supply = "12 V", control = "8 V", high = "11 V", low = "max 0.5 V" }
+feedback = { net = "FB", threshold = "2.5 V", zener = ["Z1"], lag = "max 10 us", bias-current = "0 A .. 1 uA", mode = "gated" }
+[inductor]
+L1 = { nets = ["VF", "SW"], value = "1 mH", saturation-current = "2 A", rated-current = "1 A", resistance = "0.5 ohm" }
+[mosfet]
+Q1 = { drain = "SW", gate = "G", source = "0V", rated-voltage = "400 V", rated-current = "2 A", on-resistance = "1 ohm", on-resistance-hot = "2 ohm", on-resistance-at = "10 V", gate-rating = "20 V", gate-threshold = "3 V", output-capacitance = "50 pF", avalanche-energy = "10 mJ", thermal-resistance = "60 K/W", junction-limit = "150 degC" }
+[timer]
+U1 = { supply = "VF", ground = "0V", output = "G", supply-rating = "18 V", supply-least = "4.5 V" }
+[diode]
+D1 = { anode = "SW", cathode = "N1", rated-voltage = "400 V", rated-current = "1 A", surge-current = "30 A", recovery-time = "50 ns", forward-voltage = "1 V" }
+D2 = { anode = "N1", cathode = "X1", rated-voltage = "400 V", rated-current = "1 A", surge-current = "30 A", recovery-time = "50 ns" }
+D3 = { anode = "X1", cathode = "HT", rated-voltage = "400 V", rated-current = "1 A", surge-current = "30 A", recovery-time = "50 ns" }
+DB = { anode = "DIS", cathode = "TIM", rated-voltage = "50 V" }
+[zener]
+Z1 = { cathode = "HT", anode = "ZA", zener-voltage = "150 V +-5%", rated-power = "1 W" }
+[capacitor]
+C0 = { positive = "VF", negative = "0V", value = "100 uF", rated-voltage = "35 V", dielectric = "aluminium electrolytic" }
+C1 = { nets = ["N1", "0V"], value = "100 nF", rated-voltage = "250 V", dielectric = "polypropylene" }
+C2 = { nets = ["SW", "X1"], value = "100 nF", rated-voltage = "250 V", dielectric = "polypropylene" }
+C3 = { positive = "HT", negative = "0V", value = "10 uF", rated-voltage = "450 V", dielectric = "aluminium electrolytic", ripple-current = "100 mA", surge-voltage = "500 V" }
+CT = { nets = ["TIM", "0V"], value = "1 nF", rated-voltage = "50 V", dielectric = "C0G" }
+[resistor]
+RA = { nets = ["VF", "DIS"], value = "20k", package = "0805", rated-power = "0.125 W" }
+RB = { nets = ["DIS", "TIM"], value = "20k", package = "0805", rated-power = "0.125 W" }
+R1 = { nets = ["ZA", "FB"], value = "100k", package = "0805", rated-power = "0.125 W" }
+R2 = { nets = ["FB", "0V"], value = "10k", package = "0805", rated-power = "0.125 W" }
+R3 = { nets = ["HT", "0V"], value = "1M", package = "axial 1 W", rated-power = "1 W" }
+R4 = { nets = ["HT", "0V"], value = "1M", package = "axial 1 W", rated-power = "1 W" }
+[load]
+X1 = { nets = ["HT", "0V"], current = "1 mA" }
+[[gap]]
+nets = ["HT", "*"]
+clearance = "6 mm"
+creepage = "8 mm"
+surface = "FR-4"
+[[gap]]
+nets = ["ZA", "*"]
+clearance = "6 mm"
+creepage = "8 mm"
+surface = "FR-4"
+[[gap]]
+nets = ["SW", "*"]
+clearance = "6 mm"
+creepage = "8 mm"
+surface = "FR-4"
+[[gap]]
+nets = ["X1", "*"]
+clearance = "6 mm"
+creepage = "8 mm"
+surface = "FR-4"
+[[gap]]
+nets = ["N1", "*"]
+clearance = "6 mm"
+creepage = "8 mm"
+surface = "FR-4"
+[[access]]
+nets = ["HT", "0V"]
+when = "cover off"
+[protection]
+enclosure = "finger-proof"
+indicator = true
+label = true
+)";
+
 /// With every limit set in force: no rule hides behind the setting.
 audit_outcome by_all_sets(const std::string& text)
 {
@@ -154,10 +247,24 @@ audit_outcome by_all_sets(const std::string& text)
 
 } // namespace
 
+namespace {
+
+verdict gravest_of_rule(const audit_outcome& o, const std::string& id)
+{
+    verdict worst = verdict::not_applicable;
+    const std::string rule = id.substr(0, id.find(':'));
+    for (const finding& f : o.result->judged.findings) {
+        worst = f.rule == rule ? std::min(worst, f.judged) : worst;
+    }
+    return worst;
+}
+
+} // namespace
+
 TEST_CASE("law 1: taking a value away never makes a pass nor a better end state" * doctest::test_suite("long"))
 {
     int tried = 0;
-    std::vector<std::string> texts{further_keys};
+    std::vector<std::string> texts{further_keys, converter_keys};
     for (const char* name : names) {
         texts.push_back(sample(name));
     }
@@ -178,8 +285,11 @@ TEST_CASE("law 1: taking a value away never makes a pass nor a better end state"
                 if (was == before.end()) {
                     continue;
                 }
-                const bool better =
-                    (v == verdict::pass || v == verdict::not_applicable) && was->second != verdict::pass && was->second != verdict::not_applicable;
+                // A pair that two floor gaps hold for goes to the other one when a figure of the first is not known: the rule's gravest counts.
+                const bool floor = id.ends_with("to any net");
+                const verdict now = floor ? gravest_of_rule(o, id) : v;
+                const bool better = (now == verdict::pass || now == verdict::not_applicable) && was->second != verdict::pass &&
+                                    was->second != verdict::not_applicable;
                 CAPTURE(id);
                 CAPTURE(cut);
                 CHECK_FALSE(better);

@@ -10,7 +10,7 @@ program, source = sys.argv[1:3]
 schema = json.load(open(f"{source}/lib/report/result.schema.json"))
 validator = jsonschema.Draft7Validator(schema)
 validator.check_schema(schema)
-files = ["tide-clock-as-built", "tide-clock-corrected", "geiger-bench", "minimal", "negative-rail", "repair-rail"]
+files = ["tide-clock-as-built", "tide-clock-corrected", "geiger-bench", "minimal", "negative-rail", "repair-rail", "valve-rail-flyback", "photomultiplier-ladder"]
 bad = 0
 runs = [["audit", "--format", "json", f"samples/{f}.toml"] for f in files]
 runs.append(["audit", "--format", "json", "samples/minimal.toml", "no-such-file.toml"])

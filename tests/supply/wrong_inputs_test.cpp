@@ -136,7 +136,7 @@ const added additions[] = {
     {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"], [\"VF\", \"0V\"]]", "14:11: one converter with one output for now"},
     {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nswitch = \"Q1\"", "15:10: no part 'Q1'; nearest known name: F1"},
     {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nswitch = \"R1\"",
-     "15:10: 'R1' is a resistor, a mosfet is due here [also 10:1]"},
+     "15:10: 'R1' is of kind resistor; due here: mosfet or bjt [also 10:1]"},
     {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nfeedback = { threshold = \"0.6 V\" }", "15:1: no 'net' in 'feedback'"},
     {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\noutput-voltage = \"180 V\"\nfeedback = { net = \"VF\", threshold = \"0.6 "
      "V\" }",
@@ -154,6 +154,49 @@ const added additions[] = {
     {"[load]\nX1 = { nets = [\"HT\", \"0V\"], current = \"0 .. 5 mA\" }", "13:40: a bare number: a current is due: write it like \"20 mA\""},
     {"[wobble]\nX1 = { nets = [\"HT\", \"0V\"] }", "12:2: 'wobble' is no section and no kind of part"},
     {"[zener]\nD8 = { anode = \"0V\", cathode = \"HT\", zener-voltage = \"200\" }", "13:55: a bare number: a voltage is due: write it like \"12 V\""},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { frequency = 25000 }",
+     "15:23: a bare number: a frequency is due: write it like \"29 kHz\", in quotes"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { frequency = \"25 kHz\", delay = \"1 us\" }",
+     "15:41: 'delay' is that of the comparator that ends a cycle at 'peak-current': write both"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { frequency = \"25 kHz\", peak-curent = \"1 A\" }",
+     "15:33: unknown key 'peak-curent' in 'drive'; nearest known name: peak-current"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { frequency = \"25 kHz\", control = \"3 V\" }",
+     "15:43: 'control' speaks of a timer: write 'astable' with its parts too"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { astable = { ra = \"R1\", rb = \"R2\" } }",
+     "15:11: no 'c' in 'astable'"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { duty = \"0.5\", astable = { ra = \"R1\", rb = \"R2\", c = \"R1\" "
+     "} }",
+     "15:25: 'astable' computes the duty from its parts: 'duty' is written too [also 15:18] || 15:63: 'R1' is of kind resistor; due here: capacitor "
+     "[also 10:1]"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { peak-current = \"1 V\" }",
+     "15:27: 1 V is a voltage: a current is due: write it like \"20 mA\""},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nfeedback = { net = \"VF\", threshold = \"2.5\" }",
+     "15:39: a bare number: a voltage is due: write it like \"12 V\""},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nfeedback = { net = \"VF\", mode = \"pwm\" }",
+     "15:33: 'pwm' is no mode: gated, peak-current, duty"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nfeedback = { net = \"VF\", zener = \"R1\" }",
+     "15:34: 'R1' is of kind resistor; due here: zener [also 10:1]"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nfeedback = { net = \"VF\", lag = \"20\" }",
+     "15:33: a bare number: a time is due: write it like \"5 s\""},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nclamp = { resistor = \"R1\" }",
+     "15:1: a clamp is 'diode', 'resistor' and 'capacitor', or a 'suppressor' (with or without its 'diode')"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nclamp = { suppresor = \"R1\" }",
+     "15:1: a clamp is 'diode', 'resistor' and 'capacitor', or a 'suppressor' (with or without its 'diode') || 15:11: unknown key 'suppresor' in "
+     "'clamp'; nearest known name: suppressor"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nladder = [\"R1\"]",
+     "15:11: 'R1' is of kind resistor; due here: capacitor or diode [also 10:1]"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\nladder = \"D1\"",
+     "15:10: 'ladder' is a list of references, from the switch node on"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\novershoot = 5",
+     "15:13: a bare number: a voltage is due: write it like \"12 V\", in quotes"},
+    {"[converter.K1]\ntopology = \"boost\"\noutputs = [[\"HT\", \"0V\"]]\ninductor = \"R1\"",
+     "15:12: 'R1' is of kind resistor; due here: inductor or transformer [also 10:1]"},
+    {"[converter.K1]\ntopology = \"module\"\noutputs = [[\"HT\", \"0V\"]]\ndrive = { frequency = \"25 kHz\" }",
+     "15:1: a module's drive is inside it: its output is declared by 'output-voltage'"},
+    {"[mosfet]\nQ1 = { drain = \"SW\", gate = \"VF\", source = \"0V\" }\n[inductor]\nL1 = { nets = [\"VIN\", \"SX1\"] }\n[converter.K1]\ntopology = "
+     "\"flyback\"\noutputs = [[\"HT\", \"0V\"]]\nswitch = \"Q1\"\ninductor = \"L1\"",
+     "13:16: note: net 'SW' is named in one place only || 15:1: note: 'L1' does not reach net 'SW', where 'Q1' switches || 15:1: a flyback stores in "
+     "a transformer; 'L1' is of kind inductor || 15:23: note: net 'SX1' is named in one place only"},
 };
 
 struct replaced {
