@@ -79,6 +79,7 @@ void add_stage_parts(std::vector<fact_spec>& list)
     list.push_back(solved("diode", "inrush", dim::current, "peak through it when the input is switched on, everything empty"));
     list.push_back(solved("diode", "junction", dim::temperature, "air inside + forward drop times current times thermal resistance"));
     list.push_back(truth("capacitor", "on-input", "it stands straight across the input"));
+    list.push_back(truth("capacitor", "start-up-differs", "start-up is computed or told apart from the output; a declared output includes it"));
     list.push_back(truth("capacitor", "at-output", "it stands straight across the output of a stage"));
     list.push_back(solved("capacitor", "ripple-through", dim::current, "effective current that the rectifier's pulses may send through it"));
     list.push_back(told("capacitor", "surge-limit", dim::voltage, "what it stands briefly: as written, by its standard, else its rated voltage"));

@@ -84,7 +84,9 @@ value rail_load(const supply& s, const library& lib, const rail& output, const d
     const std::set<std::string> live = live_nets(s, lib, output);
     value sum = number(exactly({0.0, dim::current}));
     for (const part& p : s.parts) {
-        if (!touches(p, live) || inside(p, live) || of_stage(s, output, p) || p.kind == "capacitor") {
+        const std::vector<element> own = elements_of(p, lib, state::running);
+        const bool only_joins = !own.empty() && std::all_of(own.begin(), own.end(), joins_nets); // what is beyond it is counted itself
+        if (!touches(p, live) || inside(p, live) || only_joins || of_stage(s, output, p) || p.kind == "capacitor") {
             continue;
         }
         const value one = drawn_by(p, output, running);

@@ -23,6 +23,8 @@ value start_up_peak(const solved_supply& s);
 value switch_effective(const solved_supply& s);
 value rectifier_average(const solved_supply& s);
 
+/// Nets that the input's positive net is one with: fuses, wires and plugs counted through, the stage's own coil not.
+std::set<std::string> input_side(const solved_supply& s);
 /// Switched on with everything empty: peak through the coil and its integral, with the input's own capacitors for the latter.
 value inrush_current(const solved_supply& s);
 value inrush_integral(const solved_supply& s);

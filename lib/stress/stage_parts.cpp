@@ -212,28 +212,16 @@ std::optional<value> of_rectifier(const solved_supply& s, const part& p, const s
     return name == "inrush" ? converter_figure(s, "inrush-current") : junction(s, p, rectifier_heat(s));
 }
 
-/// Nets that the input's positive net is one with, the stage's own coil not counted through.
-std::set<std::string> input_nets(const solved_supply& s)
-{
-    const supply& b = s.bodies();
-    if (b.fed.nets.size() != 2) {
-        return {};
-    }
-    return reach(wire(b, s.data(), state::running, {}), b.fed.nets[0], [&](const element& e) {
-        return joins_nets(e) && e.from != b.fed.nets[1] && e.to != b.fed.nets[1] && !(b.stage && e.ref == b.stage->inductor);
-    });
-}
-
 bool on_input(const solved_supply& s, const part& p)
 {
-    const std::set<std::string> side = input_nets(s);
+    const std::set<std::string> side = input_side(s);
     return p.terminals.size() >= 2 && side.contains(p.terminals[0].net) && !s.bodies().fed.nets.empty() &&
            p.terminals[1].net == s.bodies().fed.nets[1];
 }
 
 bool turned_on_input(const solved_supply& s, const part& p)
 {
-    const std::set<std::string> side = input_nets(s);
+    const std::set<std::string> side = input_side(s);
     return p.terminals.size() >= 2 && side.contains(p.terminals[1].net) && !s.bodies().fed.nets.empty() &&
            p.terminals[0].net == s.bodies().fed.nets[1];
 }
@@ -301,6 +289,9 @@ std::optional<value> of_capacitor(const solved_supply& s, const part& p, const s
     }
     if (name == "own-stage") {
         return truth_of(s.stage().there());
+    }
+    if (name == "start-up-differs") {
+        return truth_of(s.stage().there() || (s.bodies().stage && s.bodies().stage->find("overshoot") != nullptr));
     }
     if (name == "at-output") {
         return truth_of(across_output(s, p) && s.stage().there());
@@ -380,7 +371,7 @@ std::optional<value> stage_part_fact(const solved_supply& s, const part& p, cons
         return converter_figure(s, "inrush-integral");
     }
     if (p.kind == "fuse" && name == "in-input") {
-        const std::set<std::string> side = input_nets(s);
+        const std::set<std::string> side = input_side(s);
         return truth_of(p.terminals.size() == 2 && side.contains(p.terminals[0].net) && side.contains(p.terminals[1].net));
     }
     if (p.kind == "fuse" && name == "short-current") {

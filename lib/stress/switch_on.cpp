@@ -18,18 +18,6 @@ using given = stage_model::given;
 using physics::interval;
 using view = stage_model::view;
 
-/// Nets that the input's positive net is one with: fuses, coils of filters, wires and plugs counted through, the stage's own coil not.
-std::set<std::string> input_side(const solved_supply& s)
-{
-    const supply& b = s.bodies();
-    if (b.fed.nets.size() != 2) {
-        return {};
-    }
-    return reach(wire(b, s.data(), state::running, {}), b.fed.nets[0], [&](const element& e) {
-        return joins_nets(e) && e.from != b.fed.nets[1] && e.to != b.fed.nets[1] && !(b.stage && e.ref == b.stage->inductor);
-    });
-}
-
 /// Capacitance that the coil charges straight from the input: a boost stage's output, the standing rungs that a ladder's diodes lead to.
 value charged_through_coil(const solved_supply& s)
 {
@@ -116,6 +104,17 @@ std::optional<double> feed_resistance(const solved_supply& s, bool whole)
 }
 
 } // namespace
+
+std::set<std::string> input_side(const solved_supply& s)
+{
+    const supply& b = s.bodies();
+    if (b.fed.nets.size() != 2) {
+        return {};
+    }
+    return reach(wire(b, s.data(), state::running, {}), b.fed.nets[0], [&](const element& e) {
+        return joins_nets(e) && e.from != b.fed.nets[1] && e.to != b.fed.nets[1] && !(b.stage && e.ref == b.stage->inductor);
+    });
+}
 
 value inrush_current(const solved_supply& s)
 {

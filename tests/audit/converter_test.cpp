@@ -333,3 +333,37 @@ TEST_CASE("input events are judged as such and are no faults as built")
     const audit_result unsaid = *run(with(sample("valve-rail-flyback.toml"), "reversible        = true", "")).result;
     CHECK(found(unsaid, "input-reversed", "C1")->judged == verdict::not_shown);
 }
+
+TEST_CASE("A-36 through audit: a switch's heat and junction from its effective current")
+{
+    // Jacob ex 6.7, turned to a coil current: 0.11 ohm times 2.6 when hot, 62 K/W, 40 degC. Here the current is what the stage's load asks, so the
+    // junction is read back from the heat told.
+    boost_text t;
+    t.transistor =
+        R"(rated-voltage = "400 V", on-resistance = "0.11 ohm", thermal-resistance = "62 K/W", junction-limit = "60 degC", output-capacitance = "1 pF")";
+    t.parts += "\n[load]\nX1 = { nets = [\"HT\", \"0V\"], current = \"15 mA\" }\n";
+    const audit_outcome o = run(with(t.text(), "[input]", "[use]\nambient = \"40 degC\"\ninside-rise = \"0 K\"\n[input]"));
+    REQUIRE(o.result);
+    const double amps = whole(*o.result, "switch.current").high;
+    const double own = 0.5 * 1e-12 * std::pow(o.result->converter->figures.empty() ? 0.0 : whole(*o.result, "switch.voltage").high, 2) * 50e3;
+    const finding* f = found(*o.result, "switch-junction", "Q1");
+    REQUIRE(f->left);
+    CHECK(f->left->numbers.front().whole.high - 273.15 == near(40.0 + 62.0 * (amps * amps * 0.11 * 2.6 + own), 1e-5));
+    CHECK(f->judged == verdict::pass);
+}
+
+TEST_CASE("common practice without a source, as descriptions write it")
+{
+    // A silicon base-emitter drop of about 0.6 V, a bandgap reference of 1.25 V, display-tube rails of about 170 V: in daily use, no document behind
+    // them.
+    boost_text t;
+    t.feedback = R"(feedback = { net = "FB", threshold = "1.25 V +-2%", lag = "max 1 us", mode = "gated" })";
+    t.parts = with(with(t.parts, "\"71k\"", "\"1.43 Mohm +-5%\""), "\"1k\"", "\"10 kohm +-1%\"");
+    const spread set = t.audited().set_point->output.numbers.front();
+    CHECK(set.in_use.high == near(180.0));
+    CHECK(set.whole.low == near(165.99, 1e-4)); // derived reference: every tolerance against it
+    CHECK(set.whole.high == near(194.65, 1e-4));
+    t.feedback = R"(feedback = { net = "FB", threshold = "0.6 V", lag = "max 1 us", mode = "gated" })";
+    t.parts = with(with(t.parts, "\"1.43 Mohm +-5%\"", "\"680k\""), "\"10 kohm +-1%\"", "\"2.4k\"");
+    CHECK(t.audited().set_point->output.numbers.front().whole.high == near(170.6));
+}

@@ -3,12 +3,15 @@
 #include "physics/limits.hpp"
 #include "physics/storage.hpp"
 
+#include "rows.hpp"
+
 #include <doctest/doctest.h>
 
 #include <cmath>
 
 using namespace onehand;
 using namespace onehand::physics;
+using namespace onehand::test;
 
 namespace {
 
@@ -27,18 +30,6 @@ farad C(double x)
 second S(double x)
 {
     return second::from_value(x);
-}
-
-struct row {
-    const char* source;
-    double got, exact, printed, rounding; // printed to this step
-};
-
-void check(const row& r)
-{
-    CAPTURE(r.source);
-    CHECK(r.got == doctest::Approx(r.exact).epsilon(1e-6).scale(0));
-    CHECK(std::abs(std::round(r.exact / r.rounding) * r.rounding - r.printed) < r.rounding * 1e-6);
 }
 
 } // namespace
