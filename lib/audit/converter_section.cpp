@@ -14,7 +14,8 @@ struct told {
 
 const told told_of_every_stage[] = {{"load-current", "load-current", "load current"},
                                     {"output-power", "load-power", "load power"},
-                                    {"body-power", "body-power", "into a body of 2 kohm"}};
+                                    {"body-power", "body-power", "into a body of 2 kohm"},
+                                    {"body-current", "lowest-body-current", "into the lowest body resistance"}};
 
 const told told_of_own_stage[] = {{"frequency", "frequency", "frequency"},
                                   {"duty", "duty", "duty"},
@@ -57,6 +58,10 @@ std::optional<converter_facts> converter_section(const solved_supply& s)
         const part* q = s.bodies().find_part(s.bodies().stage->power_switch);
         if (q != nullptr) {
             f.figures.push_back({"switch.voltage", "switch, peak voltage", s.output().peak});
+        }
+        if (s.bodies().stage->clamp) {
+            f.figures.push_back({"clamp.voltage", "clamp, voltage", s.output().clamp_voltage});
+            f.figures.push_back({"clamp.power", "clamp, power", s.output().clamp_power});
         }
         for (const exceeded& x : runaway_order(s)) {
             f.runaway_order.push_back({x.ref, x.what, x.rail, x.time});

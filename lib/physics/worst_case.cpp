@@ -8,7 +8,7 @@ namespace onehand::physics {
 namespace {
 
 constexpr double infinite = std::numeric_limits<double>::infinity();
-constexpr int most_boxes = 300; // beyond them the bound stands as it is: farther from what is taken, never short of it
+constexpr int most_boxes = 300;    // beyond them the bound stands as it is: farther from what is taken, never short of it
 constexpr double rounding = 1e-12; // more than an interval without directed rounding can lose
 
 struct cell {

@@ -16,8 +16,8 @@ struct span_of {
 
 using on_intervals = std::function<interval(std::span<const interval>)>;
 
-/// `closeness`: how far, relative to the greatest magnitude, a bound may stand from a value that is taken; where some hundred boxes do not bring it so
-/// near it stands farther. Boxes may reach to infinity.
+/// `closeness`: how far, relative to the greatest magnitude, a bound may stand from a value that is taken; where some hundred boxes do not bring it
+/// so near it stands farther. Boxes may reach to infinity.
 span_of extremes(const on_intervals& form, const std::vector<span_of>& box, double closeness = 1e-5);
 
 } // namespace onehand::physics

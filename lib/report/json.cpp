@@ -17,10 +17,13 @@ std::string unit_of(const dimension& d)
         dimension dim;
         const char* unit;
     };
-    static const row rows[] = {{dim::voltage, "V"},    {dim::current, "A"}, {dim::resistance, "ohm"}, {dim::capacitance, "F"},
-                               {dim::inductance, "H"}, {dim::time, "s"},    {dim::frequency, "Hz"},   {dim::power, "W"},
-                               {dim::energy, "J"},     {dim::charge, "C"},  {dim::length, "m"},       {dim::temperature, "K"},
-                               {dim::none, "1"},       {dim::melting_integral, "A2s"}};
+    static const row rows[] = {{dim::voltage, "V"},      {dim::current, "A"},
+                               {dim::resistance, "ohm"}, {dim::capacitance, "F"},
+                               {dim::inductance, "H"},   {dim::time, "s"},
+                               {dim::frequency, "Hz"},   {dim::power, "W"},
+                               {dim::energy, "J"},       {dim::charge, "C"},
+                               {dim::length, "m"},       {dim::temperature, "K"},
+                               {dim::none, "1"},         {dim::melting_integral, "A2s"}};
     for (const row& r : rows) {
         if (r.dim == d) {
             return r.unit;

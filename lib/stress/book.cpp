@@ -89,7 +89,9 @@ value solved_supply::part_fact(const subject& s, state in, const std::string& na
             return b.current;
         }
         if (name == "power") {
-            return b.power;
+            const bool clamps =
+                bodies_.stage && bodies_.stage->clamp && !bodies_.stage->clamp->suppressor.empty() && bodies_.stage->clamp->suppressor == p->ref;
+            return clamps ? output_.clamp_power : b.power;
         }
         if (name == "reverse-voltage") {
             return below_zero(b.voltage);

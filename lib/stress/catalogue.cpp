@@ -132,6 +132,8 @@ void add_converter(std::vector<fact_spec>& list)
     list.push_back(solved("converter", "runaway-voltage", dim::voltage, "output with feedback lost, until something ends it"));
     list.push_back(solved("converter", "runaway-energy", dim::energy, "stored across the output then"));
     list.push_back(solved("converter", "body-power", dim::power, "into 2 kohm across the output, running"));
+    list.push_back(solved("converter", "lowest-body-current", dim::current, "across the output, into the lowest published body resistance"));
+    list.push_back(solved("converter", "clamp-power", dim::power, "what a flyback's clamp dissipates"));
     list.push_back(truth("converter", "wiper-open-raises", "a trimmer of the feedback whose wiper lifts off raises the output"));
 }
 

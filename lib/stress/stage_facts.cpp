@@ -1,5 +1,6 @@
 #include "stress/stage_facts.hpp"
 
+#include "quantity/text.hpp"
 #include "stress/rail_load.hpp"
 #include "stress/spread_math.hpp"
 #include "stress/stage_rail.hpp"
@@ -187,7 +188,44 @@ value load_power(const solved_supply& s)
     return v;
 }
 
+/// Least of the series resistances written of what stands straight across the output: what is beside it only takes its share.
+std::optional<double> series_resistance(const solved_supply& s)
+{
+    const std::set<std::string> live = live_nets(s.bodies(), s.data(), s.output());
+    const std::set<std::string> quiet = quiet_nets(s.bodies(), s.data(), s.output());
+    std::optional<double> least;
+    for (const part& p : s.bodies().parts) {
+        const field* f = p.kind == "capacitor" ? p.find("equivalent-series-resistance") : nullptr;
+        const bool across = p.terminals.size() == 2 && ((live.contains(p.terminals[0].net) && quiet.contains(p.terminals[1].net)) ||
+                                                        (live.contains(p.terminals[1].net) && quiet.contains(p.terminals[0].net)));
+        if (f != nullptr && f->number() != nullptr && across && f->number()->whole.bounded()) {
+            least = std::min(least.value_or(unbounded), f->number()->whole.high);
+        }
+    }
+    return least;
+}
+
+value charge_ripple(const solved_supply& s);
+
+/// What the charge makes on the capacitance, and the step that the rectifier's peak makes on its series resistance where that is written.
 value output_ripple(const solved_supply& s)
+{
+    value v = charge_ripple(s);
+    const auto ohms = series_resistance(s);
+    const value peak = converter_figure(s, "inductor-peak");
+    if (!ohms || s.output().topology == "boost-multiplier" || v.numbers.empty() || peak.numbers.empty()) {
+        return v;
+    }
+    const stage_model::parameter& turns = s.stage().at(given::turns);
+    spread& x = v.numbers.front();
+    x.in_use.high += peak.numbers.front().in_use.high * *ohms / turns.at->in_use.low;
+    x.whole.high += peak.numbers.front().whole.high * *ohms / turns.at->whole.low;
+    x.nominal.reset();
+    v.shown.formula = "charge over C and peak current times the least series resistance written, peak to peak";
+    return v;
+}
+
+value charge_ripple(const solved_supply& s)
 {
     if (s.output().topology == "boost-multiplier") {
         return s.output().ladder_ripple;
@@ -297,6 +335,32 @@ value held_on_current(const solved_supply& s)
     }
     v.shown.formula += ", or what the input delivers";
     return v;
+}
+
+/// Into the lowest published body resistance at the output's voltage: not exceeded by five in a hundred, large dry hands.
+value lowest_body_current(const solved_supply& s)
+{
+    const table* t = s.data().find_table("iec-60479-1-body");
+    const auto top = highest(s.output().output);
+    if (t == nullptr || !top) {
+        return missing_value(value::type::number, s.output().output.missing);
+    }
+    // Between printed rows the next one up: resistance falls with voltage.
+    const auto row = std::lower_bound(t->axis.begin(), t->axis.end(), *top);
+    const table_answer ohms = look_up(*t, "5-percent", exactly({row == t->axis.end() ? t->axis.back() : *row, dim::voltage}));
+    if (!ohms.figure) {
+        return missing_value(value::type::number, {t->title + ": " + ohms.reason});
+    }
+    value v = push_into(s.bodies(), s.output(), ohms.figure->whole.low).current;
+    v.shown.formula =
+        "into " + format_quantity({ohms.figure->whole.low, dim::resistance}, 3) + ", the lowest published body resistance at that voltage";
+    v.shown.inputs.push_back({t->title, ohms.rows, t->at});
+    return v;
+}
+
+value clamp_power(const solved_supply& s)
+{
+    return s.output().clamp_power;
 }
 
 value body_power(const solved_supply& s)
@@ -433,6 +497,8 @@ std::optional<value> stage_fact(const solved_supply& s, const std::string& name)
                                                              {"inrush-integral", inrush_integral},
                                                              {"held-on-current", held_on_current},
                                                              {"body-power", body_power},
+                                                             {"lowest-body-current", lowest_body_current},
+                                                             {"clamp-power", clamp_power},
                                                              {"runaway-energy", runaway_energy},
                                                              {"wiper-open-raises", wiper_open_raises}};
     if (name == "load-current") {
@@ -449,8 +515,8 @@ std::optional<value> stage_fact(const solved_supply& s, const std::string& name)
     if (!by_stage) {
         return std::nullopt;
     }
-    const bool anyway =
-        name == "load-power" || name == "body-power" || name == "rectifier-average" || name == "wiper-open-raises" || name == "inrush-integral";
+    const bool anyway = name == "load-power" || name == "body-power" || name == "lowest-body-current" || name == "rectifier-average" ||
+                        name == "wiper-open-raises" || name == "inrush-integral";
     if (!s.stage().there() && !anyway) {
         return missing_value(name == "mode" ? value::type::choice : value::type::number, {"what is inside the module"});
     }

@@ -63,7 +63,7 @@ void find_droop(const supply& s, const library& lib, rail& r)
             r.ladder_ripple.numbers.front().whole.high = std::max(at.ripple.value(), r.ladder_ripple.numbers.front().whole.high);
         }
     }
-    r.droop.shown.formula = "I/f times the sum of charge shares over C, drop of the peak (convention told in the formula's note)";
+    r.droop.shown.formula = "I/f times the sum of charge shares over C: drop of the output's peak; its mean lies half the ripple lower";
     r.ladder_ripple.shown.formula = "I/f times the sum over the output's column, peak to peak";
 }
 

@@ -80,6 +80,51 @@ void find_secondary(const supply& s, rail& r)
                                          swing(top.numbers.front().whole, driven.numbers.front().whole), std::nullopt});
 }
 
+/// Vc^2/R, which falls in R although Vc rises: everything at the end that heats it most.
+value resistor_power(const supply& s, const value& leaking, const rail& r)
+{
+    const part* resistor = s.find_part(s.stage->clamp->resistor);
+    const field* f = resistor == nullptr ? nullptr : resistor->find("value");
+    value v;
+    inherit(v, r.clamp_voltage);
+    if (f == nullptr || f->number() == nullptr || leaking.numbers.empty() || r.reflected.numbers.empty()) {
+        return v;
+    }
+    const auto most = [&](const range& vr, const range& p, const range& ohms) {
+        const double volts = physics::clamp_voltage(physics::volts<double>::from_value(vr.high), physics::watts<double>::from_value(p.high),
+                                                    physics::ohms<double>::from_value(ohms.low))
+                                 .value();
+        return range{0.0, volts * volts / ohms.low};
+    };
+    const spread& vr = r.reflected.numbers.front();
+    const spread& p = leaking.numbers.front();
+    const spread& ohms = *f->number();
+    v.numbers.push_back({dim::power, most(vr.in_use, p.in_use, ohms.in_use), most(vr.whole, p.whole, ohms.whole), std::nullopt});
+    v.shown = r.clamp_voltage.shown;
+    v.shown.formula = "Vc^2/R";
+    return v;
+}
+
+/// Vc/(Vc - VR) times the leakage's power; each voltage at its worst end.
+value suppressor_power(const value& leaking, const rail& r)
+{
+    value v = leaking;
+    inherit(v, r.clamp_voltage);
+    for (const bool whole : {false, true}) {
+        if (v.numbers.empty() || r.clamp_voltage.numbers.empty() || r.reflected.numbers.empty()) {
+            v.numbers.clear();
+            break;
+        }
+        const range vc = whole ? r.clamp_voltage.numbers.front().whole : r.clamp_voltage.numbers.front().in_use;
+        const range vr = whole ? r.reflected.numbers.front().whole : r.reflected.numbers.front().in_use;
+        range& to = whole ? v.numbers.front().whole : v.numbers.front().in_use;
+        // Below the reflected voltage the clamp takes what the output should: no bound.
+        to = {0.0, vc.low > vr.high ? to.high / (1.0 - vr.high / vc.low) : unbounded};
+    }
+    v.shown.formula = "Llk i^2/(2 T) Vc/(Vc - VR)";
+    return v;
+}
+
 void find_clamp(const supply& s, rail& r)
 {
     const converter& c = *s.stage;
@@ -119,22 +164,7 @@ void find_clamp(const supply& s, rail& r)
         v.shown.formula = "Vc (Vc - VR) = R Llk i^2/(2 T)";
         r.clamp_voltage = v;
     }
-    // Vc/(Vc - VR) times the leakage's power; each voltage at its worst end.
-    r.clamp_power = leaking;
-    inherit(r.clamp_power, r.clamp_voltage);
-    for (const bool whole : {false, true}) {
-        if (r.clamp_power.numbers.empty() || r.clamp_voltage.numbers.empty() || r.reflected.numbers.empty()) {
-            r.clamp_power.numbers.clear();
-            break;
-        }
-        spread& p = r.clamp_power.numbers.front();
-        const range vc = whole ? r.clamp_voltage.numbers.front().whole : r.clamp_voltage.numbers.front().in_use;
-        const range vr = whole ? r.reflected.numbers.front().whole : r.reflected.numbers.front().in_use;
-        range& to = whole ? p.whole : p.in_use;
-        // Below the reflected voltage the clamp takes what the output should: no bound.
-        to.high = vc.low > vr.high ? to.high / (1.0 - vr.high / vc.low) : unbounded;
-    }
-    r.clamp_power.shown.formula = "Llk i^2/(2 T) Vc/(Vc - VR)";
+    r.clamp_power = c.clamp->suppressor.empty() ? resistor_power(s, leaking, r) : suppressor_power(leaking, r);
 }
 
 void find_flyback_peak(const supply& s, const value& port, rail& r)

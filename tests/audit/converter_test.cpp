@@ -196,6 +196,9 @@ TEST_CASE("a person on the running rail: by delivered power, not by the set poin
         }
     }
     CHECK(found(r, "body-power", "K1")->advice.find("1.25 W") != std::string::npos);
+    // The lowest published body at 180 V: the row of 200 V, 800 ohm.
+    const double low = 6.0 + std::sqrt(36.0 + 3.6 * 800.0);
+    CHECK(whole(r, "body-current").high == near(low / 800.0, 2e-5));
     // A tenth of the inductance times as much: well below the line.
     t.inductance = "10 mH";
     CHECK(found(t.audited(), "body-power", "K1")->advice.empty());
@@ -239,6 +242,9 @@ TEST_CASE("a flyback: reflected voltage, clamp, rectifier, and which part of the
     const double vr = (whole(r, "overshoot").high + set + 1.7) / 10.0;
     const double vc = 0.5 * (vr + std::sqrt(vr * vr + 4.0 * 1575.0 * leak));
     CHECK(clamp == near(12.6 + vc, 1e-3));
+    // Its power Vc^2/R at the resistor's least.
+    const double at_least = 0.5 * (vr + std::sqrt(vr * vr + 4.0 * 1425.0 * leak));
+    CHECK(whole(r, "clamp.power").high == near(at_least * at_least / 1425.0, 1e-3));
 }
 
 TEST_CASE("a ladder of five: potentials, stress, droop, and both ways round")
@@ -366,4 +372,43 @@ TEST_CASE("common practice without a source, as descriptions write it")
     t.feedback = R"(feedback = { net = "FB", threshold = "0.6 V", lag = "max 1 us", mode = "gated" })";
     t.parts = with(with(t.parts, "\"1.43 Mohm +-5%\"", "\"680k\""), "\"10 kohm +-1%\"", "\"2.4k\"");
     CHECK(t.audited().set_point->output.numbers.front().whole.high == near(170.6));
+}
+
+TEST_CASE("output ripple counts a series resistance that is written")
+{
+    boost_text t;
+    const double bare = whole(t.audited(), "output-ripple").high;
+    t.parts = with(t.parts, "dielectric = \"polypropylene\"", "dielectric = \"polypropylene\", equivalent-series-resistance = \"0.5 ohm\"");
+    CHECK(whole(t.audited(), "output-ripple").high == near(bare + 1.2 * 0.5, 1e-5));
+}
+
+TEST_CASE("a flyback that makes a negative rail: the cathode swings")
+{
+    std::string text = sample("valve-rail-flyback.toml");
+    for (const auto& [from, to] :
+         {std::pair("outputs   = [[\"HT\", \"0V\"]]", "outputs   = [[\"0V\", \"HT\"]]"),
+          std::pair("D1 = { anode = \"SEC\", cathode = \"HT\"", "D1 = { anode = \"HT\", cathode = \"SEC\""),
+          std::pair("threshold = \"2.5 V +-1%\"", "threshold = \"-2.5 V +-1%\""),
+          std::pair("positive = \"HT\", negative = \"0V\", value = \"22 uF", "positive = \"0V\", negative = \"HT\", value = \"22 uF"),
+          std::pair("X1 = { nets = [\"HT\", \"0V\"]", "X1 = { nets = [\"0V\", \"HT\"]")}) {
+        text = with(text, from, to);
+    }
+    const audit_outcome o = run(text);
+    CAPTURE(format_complaints(o.complaints));
+    REQUIRE(o.result);
+    const audit_result positive = *run(sample("valve-rail-flyback.toml")).result;
+    for (const char* name : {"inductor.peak", "output-power", "runaway.voltage", "body-power", "overshoot", "clamp.power"}) {
+        CAPTURE(name);
+        CHECK(whole(*o.result, name).high == near(whole(positive, name).high, 1e-9));
+    }
+    for (const net_facts& n : o.result->nets) {
+        if (n.net == "SEC") {
+            CHECK(n.potential.front().second.numbers.front().whole.high == near(126.0));
+        }
+        if (n.net == "HT") {
+            CHECK(n.potential.front().second.numbers.front().whole.low == near(-positive.set_point->output.numbers.front().whole.high));
+        }
+    }
+    CHECK(found(*o.result, "rectifier-voltage", "D1")->judged == found(positive, "rectifier-voltage", "D1")->judged);
+    CHECK(found(*o.result, "capacitor-polarity", "C4")->judged == verdict::pass);
 }

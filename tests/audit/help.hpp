@@ -49,7 +49,7 @@ inline const finding* found(const audit_result& r, const std::string& rule, cons
     return nullptr;
 }
 
-inline const char* const names[] = {"tide-clock-as-built.toml", "tide-clock-corrected.toml", "geiger-bench.toml", "minimal.toml",
+inline const char* const names[] = {"tide-clock-as-built.toml", "tide-clock-corrected.toml", "geiger-bench.toml",      "minimal.toml",
                                     "negative-rail.toml",       "repair-rail.toml",          "valve-rail-flyback.toml"};
 
 } // namespace onehand::test
