@@ -18,10 +18,21 @@ std::optional<value> stage_part_fact(const solved_supply& s, const part& p, cons
 value stage_slack(const solved_supply& s);
 bool surely_discontinuous(const solved_supply& s);
 
+/// Whether whole cycles are let through one after the other, or may be; and what cannot be told of them where they run into each other.
+bool by_whole_cycles(const solved_supply& s);
+value cannot_tell(const solved_supply& s, const std::string& what);
+
 value inductor_peak(const solved_supply& s);
 value start_up_peak(const solved_supply& s);
 value switch_effective(const solved_supply& s);
 value rectifier_average(const solved_supply& s);
+
+value output_ripple(const solved_supply& s);
+value held_on_current(const solved_supply& s);
+value body_power(const solved_supply& s);
+value lowest_body_current(const solved_supply& s);
+value clamp_power(const solved_supply& s);
+value wiper_open_raises(const solved_supply& s);
 
 /// Nets that the input's positive net is one with: fuses, wires and plugs counted through, the stage's own coil not.
 std::set<std::string> input_side(const solved_supply& s);
