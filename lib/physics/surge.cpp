@@ -20,8 +20,7 @@ melting_integral coil_inrush_integral(volt u, farad c, henry l)
 
 melting_integral resistive_inrush_integral(volt u, farad c, ohm r)
 {
-    const ampere peak = u / r;
-    return 0.5 * peak * peak * (r * c);
+    return 0.5 * (u / r) * (c * u);
 }
 
 melting_integral together(melting_integral a, melting_integral b)

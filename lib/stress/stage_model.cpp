@@ -256,7 +256,8 @@ value stage_model::figure(const std::string& formula, const dimension& d, std::v
     if (s.whole.low == s.whole.high) {
         s.nominal = s.whole.low;
     }
-    if (std::isnan(s.whole.low) || std::isnan(s.whole.high)) {
+    const bool nowhere = s.whole.low == unbounded || s.in_use.low == unbounded; // it has no finite value at all
+    if (std::isnan(s.whole.low) || std::isnan(s.whole.high) || nowhere) {
         v.missing.push_back("figures for which " + formula + " has an answer");
         return v;
     }

@@ -55,6 +55,12 @@ void find_droop(const supply& s, const library& lib, rail& r)
         const spread& f = hertz.numbers.front();
         const auto at = physics::loaded(caps, r.rungs.form, ampere::from_value(whole ? l.whole.high : l.in_use.high),
                                         hertz::from_value(whole ? f.whole.low : f.in_use.low));
+        if (!std::isfinite(at.drop.value())) {
+            r.droop.numbers.clear();
+            r.droop.missing.push_back("load and frequency of the ladder, known on both sides");
+            r.ladder_ripple = r.droop;
+            return;
+        }
         if (!whole) {
             r.droop.numbers.push_back(between(dim::voltage, 0.0, at.drop.value()));
             r.ladder_ripple.numbers.push_back(between(dim::voltage, 0.0, at.ripple.value()));

@@ -97,8 +97,8 @@ std::optional<double> feed_resistance(const solved_supply& s, bool whole)
 {
     const auto& fields = s.bodies().fed.fields;
     const auto it = fields.find("source-resistance");
-    if (it == fields.end() || it->second.number() == nullptr) {
-        return std::nullopt;
+    if (it == fields.end() || it->second.number() == nullptr || !(it->second.number()->whole.low > 0.0)) {
+        return std::nullopt; // none at all is no figure
     }
     return whole ? it->second.number()->whole.low : it->second.number()->in_use.low;
 }

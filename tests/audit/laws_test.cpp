@@ -538,10 +538,11 @@ TEST_CASE("two threads may audit at once and get the same")
 TEST_CASE("no input crashes the audit")
 {
     std::mt19937 r(777);
-    const std::string whole = sample("tide-clock-corrected.toml");
-    const char* const figures[] = {"\"0 ohm\"", "\"1 Gohm\"", "\"max 5 V\"", "\"min 1 mA\"", "\"0 V\"", "\"1 pF\"", "\"0.001 mm\""};
-    for (int i = 0; i < 150; ++i) {
-        std::string text = whole;
+    const std::string wholes[] = {sample("tide-clock-corrected.toml"), sample("valve-rail-flyback.toml"), sample("tide-clock-as-built.toml")};
+    const char* const figures[] = {"\"0 ohm\"",    "\"1 Gohm\"", "\"max 5 V\"",    "\"min 1 mA\"", "\"0 V\"", "\"1 pF\"",
+                                   "\"0.001 mm\"", "\"0 H\"",    "\"max 50 kHz\"", "\"1\"",        "\"0 s\""};
+    for (int i = 0; i < 240; ++i) {
+        std::string text = wholes[i % 3];
         for (int k = 0; k < 2; ++k) {
             std::size_t at = text.find('"', r() % text.size());
             const std::size_t end = at == std::string::npos ? at : text.find('"', at + 1);
@@ -551,5 +552,14 @@ TEST_CASE("no input crashes the audit")
         }
         const audit_outcome o = run(text);
         CHECK((o.result.has_value() || !o.complaints.empty()));
+        if (o.result && o.result->converter) {
+            for (const converter_facts::figure& f : o.result->converter->figures) {
+                for (const spread& x : f.told.numbers) {
+                    CAPTURE(f.name);
+                    CAPTURE(text);
+                    CHECK_FALSE((std::isnan(x.whole.low) || std::isnan(x.whole.high) || x.whole.low > x.whole.high));
+                }
+            }
+        }
     }
 }
