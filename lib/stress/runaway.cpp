@@ -189,7 +189,8 @@ std::vector<std::string> runaway_story(const solved_supply& s)
             names += ", " + order[next].ref;
         }
         const value& t = order[i].time;
-        const std::string when = t.numbers.empty() ? "" : ", " + format_quantity({t.numbers.front().whole.low, dim::time}, 3) + " after";
+        const bool timed = !t.numbers.empty() && std::isfinite(t.numbers.front().whole.low);
+        const std::string when = !timed ? "" : ", " + format_quantity({t.numbers.front().whole.low, dim::time}, 3) + " after";
         lines.push_back("at " + volts_of(order[i].rail) + when + ": " + order[i].what + " of " + names);
         i = next;
     }

@@ -88,8 +88,9 @@ double end_of(const stage_model::parameter& p, bool whole, bool high)
 template<class Form>
 value up_to_both(const dimension& d, Form form)
 {
-    const double use = form(false);
-    return number({d, {0.0, use}, {0.0, std::max(use, form(true))}, std::nullopt});
+    const auto known = [](double x) { return std::isnan(x) ? unbounded : x; };
+    const double use = known(form(false));
+    return number({d, {0.0, use}, {0.0, std::max(use, known(form(true)))}, std::nullopt});
 }
 
 /// Resistance of everything between the source and the stage, at its least; nothing where the source's own is not told.
@@ -197,8 +198,9 @@ value start_up_peak(const solved_supply& s)
 {
     const stage_model& m = s.stage();
     const value farads = port_capacitance(s.bodies(), s.data(), s.output());
-    if (farads.numbers.empty() || !farads.missing.empty()) {
-        return missing_value(value::type::number, farads.missing);
+    if (farads.numbers.empty() || !farads.missing.empty() || !farads.numbers.front().whole.bounded()) {
+        return missing_value(value::type::number,
+                             farads.missing.empty() ? std::vector<std::string>{"capacitances known on both sides"} : farads.missing);
     }
     stage_model with = m;
     value most = farads;

@@ -150,7 +150,7 @@ double high_of(const value& v)
 
 } // namespace
 
-TEST_CASE("time domain: a boost stage deep in discontinuous mode")
+TEST_CASE("time domain: a boost stage deep in discontinuous mode" * doctest::test_suite("long"))
 {
     boost_text t;
     t.feedback = "";
@@ -183,7 +183,7 @@ R1 = { nets = ["HT", "0V"], value = "10k" })";
     within(whole(told_by, "output-ripple").high, r.high - r.low, 0.05);
 }
 
-TEST_CASE("time domain: a boost stage in continuous mode, its resistances counted")
+TEST_CASE("time domain: a boost stage in continuous mode, its resistances counted" * doctest::test_suite("long"))
 {
     boost_text t;
     t.input = "5 V";
@@ -322,7 +322,7 @@ X9 = { nets = ["0V", "N2"], current = "0.5 mA" })";
     CHECK(whole(told_by, "output-ripple").high >= (most - least) * 0.99);
 }
 
-TEST_CASE("time domain: how far lagging feedback carries the rail, and how soon it runs away")
+TEST_CASE("time domain: how far lagging feedback carries the rail, and how soon it runs away" * doctest::test_suite("long"))
 {
     for (const double filter : {0.0, 0.5e-3, 5e-3}) {
         boost_text t;
@@ -372,7 +372,7 @@ TEST_CASE("time domain: how far lagging feedback carries the rail, and how soon 
     CHECK(found_it);
 }
 
-TEST_CASE("time domain: what the coil sees until the rail stands is bounded, not far")
+TEST_CASE("time domain: what the coil sees until the rail stands is bounded, not far" * doctest::test_suite("long"))
 {
     for (const double duty : {0.5, 0.7, 0.8}) {
         boost_text t;
@@ -396,7 +396,7 @@ TEST_CASE("time domain: what the coil sees until the rail stands is bounded, not
     within(whole(t.audited(), "inrush.current").high, r.peak);
 }
 
-TEST_CASE("time domain: a flyback in discontinuous mode into a body")
+TEST_CASE("time domain: a flyback in discontinuous mode into a body" * doctest::test_suite("long"))
 {
     // 12 V, 25 uH, 1:10, 44 kHz, duty 0.3, into 2 kohm: what open cycles hold up.
     const double on = 0.3 / 44e3;

@@ -6,7 +6,7 @@ seconds=${1:-10}
 out=build/fuzz
 mkdir -p "$out/seeds"
 cp samples/*.toml rules/*.toml rules/tables/*.toml "$out/seeds/" 2>/dev/null || true
-cmake -S . -B "$out" -G Ninja -DCMAKE_CXX_COMPILER=clang++ -DONEHAND_FUZZ=ON -DCMAKE_BUILD_TYPE=RelWithDebInfo >/dev/null
+cmake -S . -B "$out" -G Ninja -DCMAKE_CXX_COMPILER=clang++ -DONEHAND_FUZZ=ON -DCMAKE_BUILD_TYPE=RelWithDebInfo -DCMAKE_CXX_FLAGS_RELWITHDEBINFO="-O1 -gline-tables-only" >/dev/null
 cmake --build "$out" --target fuzz_quantity fuzz_expression fuzz_document -j "$(nproc)"
 for target in quantity expression document; do
     echo "-- fuzz_$target"
