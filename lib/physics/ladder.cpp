@@ -9,7 +9,10 @@ ladder_load loaded(const std::vector<farad>& capacitors, ladder_form form, amper
     const std::size_t count = capacitors.size();
     const coulomb q = load / f;
     // Charge that passes a capacitor each cycle, over the output's: itself and every node above it in its column.
-    const auto share = [&](std::size_t i) { return form == ladder_form::from_base ? 1.0 : static_cast<double>((count - 1 - i) / 2 + 1); };
+    const auto share = [&](std::size_t i) {
+        const std::size_t above = (count - 1 - i) / 2;
+        return form == ladder_form::from_base ? 1.0 : static_cast<double>(above + 1);
+    };
     ladder_load out;
     volt down{}; // how far the capacitor's peak stands below its own unloaded voltage
     for (std::size_t i = 0; i < count; ++i) {

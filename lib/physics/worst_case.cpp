@@ -43,7 +43,10 @@ private:
     {
         const interval v = form_(at);
         const double high = sign_ > 0.0 ? v.upper() : -v.lower();
-        return std::isnan(high) ? infinite : high;
+        if (std::isnan(high)) {
+            return infinite;
+        }
+        return high;
     }
 
     double taken(const std::vector<interval>& point) const

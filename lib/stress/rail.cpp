@@ -112,7 +112,10 @@ void find_standby(const supply& s, bool discharged, rail& r)
     const value in = written_value(s.fed.voltage, value::type::number, "input.voltage");
     const bool settles = r.topology != "module" && discharged;
     if (r.topology == "boost" || (r.topology == "boost-multiplier" && settles)) {
-        const double drop = r.topology == "boost" ? rectifier_drop : unbounded;
+        double drop = unbounded;
+        if (r.topology == "boost") {
+            drop = rectifier_drop;
+        }
         r.standby = in;
         for (spread& v : r.standby.numbers) {
             v.in_use.low = std::max(0.0, v.in_use.low - drop);

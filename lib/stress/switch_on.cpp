@@ -146,7 +146,9 @@ value inrush_current(const solved_supply& s)
     const field* limit = p == nullptr ? nullptr : p->find("saturation-current");
     if (limit != nullptr && limit->number() != nullptr && v.numbers.front().whole.high > limit->number()->whole.low) {
         v.numbers.front().whole.high = unbounded;
-        v.numbers.front().in_use.high = v.numbers.front().in_use.high > limit->number()->in_use.low ? unbounded : v.numbers.front().in_use.high;
+        if (v.numbers.front().in_use.high > limit->number()->in_use.low) {
+            v.numbers.front().in_use.high = unbounded;
+        }
         v.shown.formula = "Uin sqrt(C/L) passes " + p->ref + "'s saturation: bounded by resistance only";
     }
     return v;
