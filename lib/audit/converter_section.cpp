@@ -55,7 +55,7 @@ std::optional<converter_facts> converter_section(const solved_supply& s)
         for (const told& t : told_of_own_stage) {
             tell(t);
         }
-        const part* q = s.bodies().find_part(s.bodies().stage->power_switch);
+        const part* q = first_body(s.bodies(), s.bodies().stage->power_switch);
         if (q != nullptr) {
             f.figures.push_back({"switch.voltage", "switch, peak voltage", s.output().peak});
         }

@@ -43,7 +43,7 @@ free_run run_free(const supply& s, const rail& r, double siemens)
                        [ohms](const view& v) { return physics::open_loop(v.stage, physics::ohms<interval>::from_value(interval(ohms))).value(); }),
               "what surely loads it", multiple);
     }
-    const part* q = s.find_part(s.stage->power_switch);
+    const part* q = first_body(s, s.stage->power_switch);
     const auto field_of = [&](const char* name) { return q == nullptr ? nullptr : q->find(name); };
     if (const field* co = field_of("output-capacitance"); co != nullptr && co->number() != nullptr && co->number()->whole.low > 0.0) {
         const range c = co->number()->whole;

@@ -170,7 +170,7 @@ void find_nets(const supply& s, rail& r)
         add_bodies(s, c.clamp->diode, r.stage_parts);
     }
     r.gate_net = c.gate;
-    const part* power_switch = s.find_part(c.power_switch);
+    const part* power_switch = first_body(s, c.power_switch);
     if (power_switch != nullptr && r.topology != "module" && !r.topology.empty()) {
         r.switch_net = power_switch->terminals.front().net;
         r.switch_return = power_switch->terminals.back().net;

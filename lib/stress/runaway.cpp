@@ -156,7 +156,7 @@ std::string volts_of(double v)
 /// Whether the switch's package bears the stage's whole power in breakdown; nothing where that is not told.
 std::optional<bool> bears_breakdown(const solved_supply& s)
 {
-    const part* q = s.bodies().find_part(s.bodies().stage->power_switch);
+    const part* q = first_body(s.bodies(), s.bodies().stage->power_switch);
     const auto number_of = [&](const char* name) { return q == nullptr || q->find(name) == nullptr ? nullptr : q->find(name)->number(); };
     const spread* rth = number_of("thermal-resistance");
     const spread* limit = number_of("junction-limit");

@@ -14,7 +14,7 @@ value flyback_reverse(const supply& s, const rail& r, const value& output)
         return missing_value(value::type::number, {"a secondary that the rectifier hangs on"});
     }
     // The side of the swing that the switch drives: below zero where the anode swings, above where the cathode does.
-    const part* d = s.find_part(s.stage->rectifier);
+    const part* d = first_body(s, s.stage->rectifier);
     const bool below = d != nullptr && d->net("anode") == r.secondary_net;
     value driven = r.secondary_swing;
     for (spread& x : driven.numbers) {

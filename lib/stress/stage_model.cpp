@@ -28,6 +28,12 @@ spread not_negative(const spread& s)
 
 } // namespace
 
+const part* first_body(const supply& s, const std::string& ref)
+{
+    const part* whole = ref.empty() ? nullptr : s.find_part(ref);
+    return whole != nullptr || ref.empty() ? whole : s.find_part(ref + "/1");
+}
+
 stage_model::stage_model(const supply& s, const library& lib)
 {
     if (!s.stage || s.stage->topology == "module" || s.stage->topology.empty()) {
@@ -112,8 +118,11 @@ void stage_model::read_parts(const supply& s, const library&)
 {
     const converter& c = *s.stage;
     const part* coil = s.find_part(c.inductor);
-    const part* power_switch = s.find_part(c.power_switch);
-    const part* rectifier = s.find_part(c.rectifier.empty() ? (c.ladder.empty() ? std::string{} : c.ladder.front()) : c.rectifier);
+    const part* power_switch = first_body(s, c.power_switch);
+    const std::string first = c.rectifier.empty() ? (c.ladder.empty() ? std::string{} : c.ladder.front()) : c.rectifier;
+    const part* rectifier = first_body(s, first);
+    const auto of_string = [&](const part& p) { return p.ref == first || p.ref.starts_with(first + "/"); };
+    const auto bodies = std::max<std::ptrdiff_t>(1, std::count_if(s.parts.begin(), s.parts.end(), of_string));
     const bool wound = coil != nullptr && coil->kind == "transformer";
     from_field(given::inductance, coil, wound ? "primary-inductance" : "value", c.inductor.empty() ? c.name + ".inductor" : c.inductor);
     from_field(given::coil, coil, wound ? "primary-resistance" : "resistance", c.inductor.empty() ? c.name + ".inductor" : c.inductor);
@@ -137,8 +146,9 @@ void stage_model::read_parts(const supply& s, const library&)
     if (!drop.at || !drop.at->whole.bounded()) {
         drop.at = between(dim::voltage, 0.0, unsaid_drop);
         drop.missing.clear();
-        drop.shown = evidence::input{drop.name, "unsaid: 0 V to 1.5 V (practice)", {}};
+        drop.shown = evidence::input{drop.name, "unsaid: 0 V to 1.5 V a body (practice)", {}};
     }
+    drop.at = scaled(*drop.at, static_cast<double>(bodies)); // the bodies of a string drop one after the other
 }
 
 std::vector<given> stage_model::cycle() const

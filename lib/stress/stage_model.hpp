@@ -10,6 +10,9 @@
 
 namespace onehand {
 
+/// The part of that reference, or the first body of its string.
+const part* first_body(const supply& s, const std::string& ref);
+
 class stage_model {
 public:
     enum class given : std::size_t {

@@ -24,11 +24,42 @@ struct pump {
     bool run_together = false;
 };
 
+/// Below twice the voltage where full cycles run into each other the coil may still carry the current that start-up built: its energy is the last
+/// packet's then, (Uss sqrt(C) + Uin on/sqrt(L))^2/2.
+value climbing_energy(const rail& r, const pump& p)
+{
+    const auto settled = [](const view& v) {
+        const interval off = interval(1.0) - v.stage.duty;
+        return v.stage.is == physics::shape::boost ? v.stage.in.value() / off
+                                                   : v.stage.in.value() * v.stage.turns * v.stage.turns * v.stage.duty / off;
+    };
+    auto needs = with_cycle(r.model, {given::in, given::inductance, given::turns});
+    const value top = r.model.figure("", dim::voltage, needs, settled);
+    const bool above = !top.numbers.empty() && !r.port.numbers.empty() && r.port.numbers.front().whole.low > 2.0 * top.numbers.front().whole.high;
+    if (above || p.farads.numbers.empty() || !p.farads.numbers.front().whole.bounded()) {
+        return p.energy;
+    }
+    stage_model with = r.model;
+    value most = p.farads;
+    for (spread& x : most.numbers) {
+        x.in_use.low = x.in_use.high;
+        x.whole = {std::min(x.whole.high, x.in_use.high), x.whole.high};
+    }
+    with.set(given::capacitance, most, "capacitance reached from the output");
+    needs.push_back(given::capacitance);
+    return with.figure("(Uss sqrt(C) + Uin on/sqrt(L))^2/2", dim::energy, needs, [&](const view& v) {
+        const interval own = v.stage.in.value() * v.stage.on.value() / physics::root(v.stage.inductance.value());
+        const interval volts = settled(v) / v.stage.turns;
+        return physics::squared(volts * physics::root(v.of(given::capacitance)) + own) * interval(0.5);
+    });
+}
+
 pump pump_of(const supply& s, const library& lib, const rail& r)
 {
     const stage_model& m = r.model;
     const auto cycle = with_cycle(m, {given::in, given::inductance});
     pump p;
+    p.farads = port_capacitance(s, lib, r);
     p.power = m.figure("L i^2/(2 T)", dim::power, cycle, [](const view& v) { return physics::full_power(v.stage).value(); });
     p.energy = m.figure("L i^2/2", dim::energy, cycle, [](const view& v) { return physics::full_energy(v.stage).value(); });
     p.most = m.figure("Uin i", dim::power, cycle, [](const view& v) { return (v.stage.in * physics::full_peak(v.stage)).value(); });
@@ -36,7 +67,9 @@ pump pump_of(const supply& s, const library& lib, const rail& r)
     auto all = cycle;
     all.insert(all.end(), {given::out, given::drop, given::turns});
     p.slack = m.figure("1 - (on + emptying)/T", dim::none, all, [](const view& v) { return physics::slack(v.stage); });
-    p.farads = port_capacitance(s, lib, r);
+    if (!m.limited()) {
+        p.energy = climbing_energy(r, p);
+    }
     p.filter = sense_filter(s, lib, r);
     const auto lag = s.stage->feedback.find("lag");
     p.lag = written_value(lag == s.stage->feedback.end() ? std::nullopt : std::optional(lag->second), value::type::number,
@@ -137,6 +170,13 @@ void find_start_up(const supply& s, const library& lib, rail& r)
     r.start_up = sum(r.output, r.overshoot);
     r.start_up.shown = r.overshoot.shown;
     r.start_up.shown.formula = "set point + overshoot";
+    if (r.topology == "boost" && r.model.at(given::in).at) {
+        // The coil rings the empty output to twice the input, and the rectifier keeps it.
+        for (spread& x : r.start_up.numbers) {
+            x.in_use.high = std::max(x.in_use.high, 2.0 * r.model.at(given::in).at->in_use.high);
+            x.whole.high = std::max(x.whole.high, 2.0 * r.model.at(given::in).at->whole.high);
+        }
+    }
 }
 
 } // namespace onehand

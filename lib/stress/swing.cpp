@@ -49,7 +49,7 @@ void find_boost_peak(const supply& s, rail& r, const value& port)
 void find_secondary(const supply& s, rail& r)
 {
     const part* coil = s.find_part(s.stage->inductor);
-    const part* rectifier = s.find_part(s.stage->rectifier);
+    const part* rectifier = first_body(s, s.stage->rectifier);
     if (coil == nullptr || coil->kind != "transformer" || rectifier == nullptr) {
         return;
     }
@@ -194,7 +194,7 @@ void find_flyback_peak(const supply& s, const value& port, rail& r)
         r.peak.assumed.push_back("a clamp that takes hold at once on " + r.switch_net + " (" + c.name + ".spike unsaid; practice)");
         return;
     }
-    const part* q = s.find_part(c.power_switch);
+    const part* q = first_body(s, c.power_switch);
     const field* co = q == nullptr ? nullptr : q->find("output-capacitance");
     const auto cycle = with_cycle(r.model, {given::in, given::inductance, given::leakage});
     value spike;
