@@ -1,5 +1,7 @@
 // Full counts of the comparison that the tests run smaller: converters times draws (default 300 and 10 000), and how near the draws come to the
 // report.
+#include <doctest/doctest.h>
+
 #include "audit/random_converters.hpp"
 
 #include <cstdlib>
