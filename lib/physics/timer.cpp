@@ -1,5 +1,7 @@
 #include "physics/timer.hpp"
 
+#include <limits>
+
 namespace onehand::physics {
 
 namespace {
@@ -11,6 +13,9 @@ N charging(const N& share, const N& drop)
 {
     // 1 + (share/2)/(1 - share - drop): each of them once but for the share, which only raises it.
     const N left = at_least(N(1.0) - share - drop, 0.0);
+    if (!(most(left) > 0.0)) {
+        return N(std::numeric_limits<double>::infinity()); // it never gets there
+    }
     return logarithm(N(1.0) + share * N(0.5) / left);
 }
 

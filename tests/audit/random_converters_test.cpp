@@ -28,7 +28,7 @@ TEST_CASE("random converters: no draw exceeds the report" * doctest::test_suite(
     CHECK(told_of > figures / 2);
 }
 
-TEST_CASE("random converters: the report is reached, not only kept away from" * doctest::test_suite("long"))
+TEST_CASE("random converters: the report is reached and not only kept away from" * doctest::test_suite("long"))
 {
     // The ends of the ranges that decide, put together by hand: each figure comes within a thousandth of what is told.
     std::mt19937 random(7);

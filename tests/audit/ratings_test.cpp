@@ -236,7 +236,7 @@ TEST_CASE("derating of cartridge fuses row by row: share of the rated current")
     }
 }
 
-TEST_CASE("good practice never changes a verdict nor a conclusion")
+TEST_CASE("good practice never changes a verdict nor a conclusion" * doctest::test_suite("long"))
 {
     const std::vector<std::string> files(std::begin(names), std::end(names));
     for (const std::string& name : files) {

@@ -183,7 +183,7 @@ R1 = { nets = ["HT", "0V"], value = "10k" })";
     within(whole(told_by, "output-ripple").high, r.high - r.low, 0.05);
 }
 
-TEST_CASE("time domain: a boost stage in continuous mode, its resistances counted" * doctest::test_suite("long"))
+TEST_CASE("time domain: a boost stage in continuous mode and its resistances counted" * doctest::test_suite("long"))
 {
     boost_text t;
     t.input = "5 V";
@@ -233,7 +233,7 @@ X1 = { nets = ["HT", "0V"], current = "0.5 A" })";
     CHECK(told_by.converter->mode == "continuous");
 }
 
-TEST_CASE("time domain: a ladder of two stages, loaded" * doctest::test_suite("long"))
+TEST_CASE("time domain: a ladder of two stages and loaded" * doctest::test_suite("long"))
 {
     // Two stages of 22 nF at 25 kHz, 0.5 mA drawn; diodes of half an ohm one way and nothing the other. The drive stands at 100 V and at 0 V for a
     // microsecond each and between them where nothing conducts, as the published sums assume. They also take the load's charge as drawn at once
@@ -322,7 +322,7 @@ X9 = { nets = ["0V", "N2"], current = "0.5 mA" })";
     CHECK(whole(told_by, "output-ripple").high >= (most - least) * 0.99);
 }
 
-TEST_CASE("time domain: how far lagging feedback carries the rail, and how soon it runs away" * doctest::test_suite("long"))
+TEST_CASE("time domain: how far lagging feedback carries the rail and and how soon it runs away" * doctest::test_suite("long"))
 {
     for (const double filter : {0.0, 0.5e-3, 5e-3}) {
         boost_text t;
@@ -372,7 +372,7 @@ TEST_CASE("time domain: how far lagging feedback carries the rail, and how soon 
     CHECK(found_it);
 }
 
-TEST_CASE("time domain: what the coil sees until the rail stands is bounded, not far" * doctest::test_suite("long"))
+TEST_CASE("time domain: what the coil sees until the rail stands is bounded and not far" * doctest::test_suite("long"))
 {
     for (const double duty : {0.5, 0.7, 0.8}) {
         boost_text t;

@@ -106,7 +106,7 @@ TEST_CASE("no recording without a sample")
     }
 }
 
-TEST_CASE("the text keeps to 80 columns and to its own first screen")
+TEST_CASE("the text keeps to 80 columns and to its own first screen" * doctest::test_suite("long"))
 {
     const text_options how{false, true, &library_of(opened())};
     for (const fs::path& p : samples()) {
@@ -131,7 +131,7 @@ TEST_CASE("the text keeps to 80 columns and to its own first screen")
     }
 }
 
-TEST_CASE("the same bytes from run to run and colour adds only colour")
+TEST_CASE("the same bytes from run to run and colour adds only colour" * doctest::test_suite("long"))
 {
     for (const fs::path& p : samples()) {
         const audit_outcome a = run(p);
